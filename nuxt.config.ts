@@ -1,0 +1,88 @@
+export default defineNuxtConfig({
+  modules: [
+    '@nuxt/eslint',
+    '@nuxtjs/tailwindcss',
+    '@pinia/nuxt',
+    '@vueuse/nuxt',
+    '@sidebase/nuxt-auth',
+    '@nuxt/icon',
+    'nuxt-security',
+  ],
+  // Our own code is imported by name, so that a linter sees every import.
+  imports: { scan: false },
+  devtools: { enabled: false },
+  app: {
+    head: {
+      htmlAttrs: { lang: 'en' },
+      meta: [{ name: 'theme-color', content: '#14285e' }],
+      link: [{ rel: 'icon', type: 'image/svg+xml', href: '/icon.svg' }],
+    },
+  },
+  css: [
+    '@fontsource-variable/archivo/standard.css',
+    '@fontsource-variable/red-hat-mono/wght.css',
+    '~/assets/css/main.css',
+  ],
+  runtimeConfig: {
+    // Each is overridden by NUXT_<NAME>; server/utils/config.ts checks them at start.
+    authSecret: '',
+    databaseUrl: '',
+    role: 'both',
+    migrateOnStart: true,
+    demoNow: '',
+    mailUrl: '',
+    mailFrom: '',
+    publicUrl: '',
+    storageEndpoint: '',
+    storagePublicEndpoint: '',
+    storageRegion: '',
+    storageBucket: '',
+    storageAccessKey: '',
+    storageSecretKey: '',
+  },
+  experimental: { typedPages: true },
+  compatibilityDate: '2026-01-01',
+  nitro: {
+    imports: false as never,
+    esbuild: { options: { target: 'node20' } },
+    compressPublicAssets: { gzip: true, brotli: true },
+  },
+  vite: {
+    build: { target: 'es2022' },
+    optimizeDeps: { include: ['vee-validate', '@vee-validate/zod', 'zod', 'd3-shape', 'd3-scale', 'idb'] },
+  },
+  typescript: {
+    strict: true,
+    tsConfig: {
+      compilerOptions: { noUncheckedIndexedAccess: true },
+      exclude: ['../tests/**', '../scripts/**', '../docker/**', '../server/**'],
+    },
+  },
+  telemetry: false,
+  auth: {
+    originEnvKey: 'AUTH_ORIGIN',
+    provider: { type: 'authjs', trustHost: false, defaultProvider: 'credentials', addDefaultCallbackUrl: true },
+    globalAppMiddleware: false,
+  },
+  icon: {
+    provider: 'none',
+    fallbackToApi: false,
+    serverBundle: { collections: ['lucide'] },
+    clientBundle: { scan: true, sizeLimitKb: 64 },
+  },
+  security: {
+    headers: {
+      contentSecurityPolicy: {
+        'img-src': ['\'self\'', 'data:', 'blob:', process.env.NUXT_STORAGE_PUBLIC_ENDPOINT ?? ''].filter(Boolean),
+        'upgrade-insecure-requests': false,
+      },
+      permissionsPolicy: { camera: ['self'], fullscreen: ['self'] },
+      crossOriginEmbedderPolicy: false,
+    },
+    rateLimiter: false,
+    requestSizeLimiter: false,
+    xssValidator: false,
+    corsHandler: false,
+  },
+  tailwindcss: { cssPath: false, viewer: false, exposeConfig: false },
+})

@@ -1,0 +1,6 @@
+import type { Config } from 'tailwindcss'
+
+export default {
+  content: [],
+  theme: { extend: {} },
+} satisfies Config
