@@ -1,0 +1,18 @@
+import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
+import { id, instant } from './column'
+
+/** A lesson of the course. What it says is in its versions. */
+export const Lesson = defineEntity({
+  name: 'Lesson',
+  properties: {
+    id: id(),
+    number: p.integer().unique(),
+    slug: p.string().length(80).unique(),
+    title: p.string().length(160),
+    module: p.string().length(80),
+    /** Ops of the stages that need it. */
+    ops: p.array(Number),
+    createdAt: instant().onCreate(() => new Date()),
+  },
+})
+export type Lesson = InferEntity<typeof Lesson>

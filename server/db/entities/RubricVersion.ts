@@ -1,0 +1,18 @@
+import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
+import type { Rubric } from '../../../shared/domain/rubric/criterion'
+import { id, instant } from './column'
+import { User } from './User'
+
+/** The whole rubric as it stood: stages, points, criteria, bands and texts. Never changed; a change is the next version. */
+export const RubricVersion = defineEntity({
+  name: 'RubricVersion',
+  properties: {
+    id: id(),
+    version: p.integer().unique(),
+    rubric: p.json<Rubric>(),
+    note: p.text().default(''),
+    savedBy: () => p.manyToOne(User).ref().nullable(),
+    savedAt: instant(),
+  },
+})
+export type RubricVersion = InferEntity<typeof RubricVersion>
