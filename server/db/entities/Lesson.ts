@@ -11,7 +11,7 @@ export const Lesson = defineEntity({
     title: p.string().length(160),
     module: p.string().length(80),
     /** Ops of the stages that need it. */
-    ops: p.array(Number),
+    ops: p.array(Number).columnType('integer[]'),
     createdAt: instant().onCreate(() => new Date()),
   },
 })

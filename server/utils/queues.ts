@@ -1,0 +1,22 @@
+/**
+ * Every kind of work that happens later, with how often and how patiently it is tried again.
+ * `expireInSeconds` is well above each handler's own time: a job that outlives it would run twice at once.
+ */
+export const queues = {
+  'score-submission': { policy: 'standard', retryLimit: 8, retryDelay: 1, retryBackoff: true, expireInSeconds: 15 },
+  'prepare-photo': { policy: 'standard', retryLimit: 6, retryDelay: 2, retryBackoff: true, expireInSeconds: 120 },
+  'send-mail': { policy: 'standard', retryLimit: 12, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
+  'seal-audit': { policy: 'short', retryLimit: 3, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
+  'clear-uploads': { policy: 'short', retryLimit: 3, retryDelay: 60, retryBackoff: true, expireInSeconds: 600 },
+} as const
+
+export type QueueName = keyof typeof queues
+
+/** What each kind of job carries: ids only; the handler reads the rest fresh. */
+export interface JobData {
+  'score-submission': { submissionId: string }
+  'prepare-photo': { photoId: string }
+  'send-mail': { mailId: string }
+  'seal-audit': { reason: string }
+  'clear-uploads': Record<string, never>
+}
