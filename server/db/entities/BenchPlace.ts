@@ -20,5 +20,7 @@ export const BenchPlace = defineEntity({
     finishedAt: instant().nullable(),
   },
   uniques: [{ properties: ['cohort', 'person'] }],
+  // A bench takes one person; states that take none have no part in it.
+  indexes: [{ name: 'bench_place_slot_taken', expression: `create unique index "bench_place_slot_taken" on "bench_place" ("cohort_id", "slot") where "state" in ('offered', 'deposit-paid', 'confirmed', 'here')` }],
 })
 export type BenchPlace = InferEntity<typeof BenchPlace>

@@ -1,0 +1,117 @@
+import { z } from 'zod'
+import type { FlowRun, SheetHeader } from '../domain/airflow/flow-run'
+import type { CriterionResult } from '../domain/rubric/evidence'
+import type { CriterionState } from '../domain/rubric/criterion'
+import type { Side } from '../domain/units/port'
+
+/** What the server answers and the pages draw. Times are ISO strings; lengths mm unless a name says otherwise. */
+
+export interface MeView { id: string, name: string, email: string, roles: ('student' | 'instructor' | 'admin' | 'safety')[], unit: 'mm' | 'in', places: { cohort: string, code: string, state: string, slot: number | null, finishedAt: string | null }[] }
+
+export type StageState = 'shut' | 'open' | 'held' | 'done'
+export type PointState = 'shut' | 'asked' | 'released' | 'released with a condition' | 'sent back' | 'stopped' | 'told' | 'seen' | 'not seen'
+
+export interface PointView { code: string, name: string, kind: 'hold' | 'witness', when: string, state: PointState, at: string | null, by: string | null, conditions: string[], waitUntil: string | null }
+export interface StageView { op: number, code: string, name: string, state: StageState, why: string | null, points: PointView[], lessons: { number: number, slug: string, title: string }[], submission: { id: string, part: string, try: number, state: string } | null }
+
+export interface HeadSummary { id: string, number: string, student: { id: string, name: string }, cohort: { code: string, name: string } | null, casting: { code: string, name: string, cylinders: number }, state: 'received' | 'working' | 'held' | 'stopped' | 'finished' | 'scrapped' | 'sawn', stageNow: { op: number, name: string } | null }
+export interface HeadView extends HeadSummary { rubricVersion: number, stages: StageView[], stops: { id: string, where: string, reason: string, by: string, at: string }[] }
+
+/** Everything known at every spot of a head, newest first at each. */
+export interface SpotView { quantity: string, title: string, cylinder: number | null, side: Side | null, spot: string | null, op: number, value: number, unit: string, expandedUncertainty: number, asTyped: string[], typedUnit: string, instrument: string, takenAt: string, older: { value: number, op: number, takenAt: string }[] }
+
+export interface WantedView { kind: 'photo' | 'reading' | 'flow-sheet' | 'document', view: string | null, viewName: string | null, quantity: string | null, title: string, cylinder: number | null, side: Side | null, spot: string | null, when: 'before' | 'after' | null, note: string | null, count: number, have: number, criteria: string[] }
+
+export interface PhotoView { id: string, view: string, viewName: string, cylinder: number | null, side: Side | null, spot: string | null, state: 'taken' | 'being measured' | 'cannot use' | 'measured' | 'reviewed', problem: string | null, thumbUrl: string | null, previewUrl: string | null, width: number | null, height: number | null, takenAt: string, addedBy: string }
+export interface ReadingView { id: string, quantity: string, cylinder: number | null, side: Side | null, at: Record<string, unknown> | null, spot: string | null, when: 'before' | 'after' | null, values: string[], unit: string, mean: number, baseUnit: string, expandedUncertainty: number, instrument: string, takenAt: string, voidedAt: string | null, addedBy: string }
+export interface SheetView {
+  id: string, version: number, kind: 'flow' | 'plate-log', state: 'raw' | 'read' | 'asked' | 'used' | 'set aside', filename: string, bench: string | null
+  header: SheetHeader
+  columns: { heading: string, meaning: string | null, unit: string | null, from: string }[]
+  firstRows: string[][]
+  runs: FlowRun[]
+  findings: { code: string, severity: 'note' | 'ask' | 'refuse', lifts: number[], text: string }[]
+  needs: { field: string, question: string, choices?: string[] }[]
+  plateLog: unknown
+}
+export interface DocumentView { id: string, filename: string, note: string, addedAt: string, url: string | null }
+
+export interface ResultView extends Omit<CriterionResult, 'criterion'> {
+  id: string
+  override: { state: CriterionState, reason: string, by: string, at: string } | null
+}
+export interface CriterionView { id: string, title: string, kind: string, unit: string, weight: number, must: boolean, stop: boolean, state: CriterionState, machineState: CriterionState, stage: { op: number, code: string }, results: ResultView[] }
+
+export interface SubmissionView {
+  id: string
+  head: HeadSummary
+  op: number
+  stageName: string
+  version: number
+  part: 'before' | 'first' | 'rest'
+  point: { code: string, name: string } | null
+  try: number
+  state: 'draft' | 'asked' | 'scored' | 'decided'
+  decision: 'release' | 'send-back' | 'stop' | null
+  scoredVersion: number | null
+  score: number | null
+  word: string | null
+  note: string
+  askedAt: string | null
+  ports: { cylinder: number, side: Side }[]
+  photos: PhotoView[]
+  readings: ReadingView[]
+  sheets: SheetView[]
+  documents: DocumentView[]
+  wanted: WantedView[]
+  criteria: CriterionView[]
+  caution: { lines: string[] }
+  firstTry: { id: string, criteria: CriterionView[] } | null
+}
+
+export interface QueueItem { id: string, head: { id: string, number: string }, student: string, cohort: string | null, op: number, stageName: string, part: string, try: number, point: { code: string, name: string } | null, state: string, askedAt: string, waitingMinutes: number, stopStands: boolean, states: Record<CriterionState, number>, youMaySign: boolean }
+
+/** What the review screen needs beyond the submission: the criteria the point needs, whichever stage scored them, curves and earlier decisions. */
+export interface ReviewSheetView {
+  submission: SubmissionView
+  criteria: CriterionView[]
+  proposedFeedback: string
+  curves: CurveSetView[]
+  reviews: FeedbackView[]
+  release: { allowed: boolean, refused: { criterion: string, cylinder: number | null, side: Side | null, at: string | null, state: string, why: string }[], needReason: { criterion: string, cylinder: number | null, side: Side | null }[], conditions: string[] }
+  maySign: { may: boolean, why: string | null }
+  signedBefore: { by: string, at: string }[]
+}
+
+export interface CurveSetView { cylinder: number | null, side: Side, runs: { label: string, stage: string, op: number, date: string | null, points: { liftMm: number, cfm28: number, expandedUncertainty: number }[], missing: { liftMm: number, reason: string }[] }[], changes: { liftMm: number, cfm: number, expandedUncertainty: number, percent: number, verdict: 'gain' | 'loss' | 'no clear change' }[] | null }
+
+export interface PinView { number: number, photoId: string, x: number, y: number, criterion: string, text: string }
+export interface FeedbackView {
+  id: string, submissionId: string, head: string, op: number, stageName: string, point: string | null, pointName: string | null, try: number, decision: 'release' | 'send-back' | 'stop', by: string, at: string, condition: string | null, conditions: string[], feedback: string
+  score: number | null, word: string | null
+  sentences: { criterion: string, title: string, cylinder: number | null, side: Side | null, at: string | null, state: CriterionState, text: string }[]
+  pins: PinView[]
+  readAt: string | null
+}
+
+/** My bench: what a student needs before the next stroke. */
+export interface BenchView {
+  head: HeadView | null
+  otherHeads: HeadSummary[]
+  today: { date: string, week: number | null, weeks: number | null }
+  caution: string[]
+  next: { op: number, stageName: string, stroke: string, lesson: { number: number, slug: string, title: string } | null, submission: { id: string, part: string, state: string } | null, offersStroke: boolean, why: string | null } | null
+  metalLeft: { what: string, where: string, takeMm: number | null, stopAtMm: number, expandedUncertainty: number, valueMm: number, chanceUnderHardLeast: number, handAllowanceMm: number, band: CriterionResult['band'] }[]
+  noMoreCutting: string[]
+  waiting: { title: string, detail: string, state: string, to: string }[]
+  wanted: WantedView[]
+  fromInstructor: { by: string, at: string, text: string, submissionId: string } | null
+}
+
+export interface InstrumentView { code: string, name: string, quantities: string[], expandedU: number, relative: boolean, unit: string, due: string | null }
+export interface LessonSummary { number: number, slug: string, title: string, module: string, ops: number[] }
+export interface LessonView extends LessonSummary { html: string, version: number, publishedAt: string }
+export interface Page<Item> { items: Item[], next: string | null }
+
+/** Keyset paging: `after` is the `next` of the page before. */
+export const pageQuery = z.object({ after: z.string().max(200).optional(), limit: z.coerce.number().int().min(1).max(100).default(25) })
