@@ -1,0 +1,13 @@
+import { Problem } from './problem'
+
+/** Runs the body of one command of ours: a problem is printed as its sentence, anything else whole; both end with 1. */
+export async function runCommand(body: () => Promise<void>): Promise<void> {
+  try {
+    await body()
+  }
+  catch (error) {
+    if (error instanceof Problem) process.stderr.write(`\n${error.message}\n`)
+    else console.error(error)
+    process.exitCode = 1
+  }
+}
