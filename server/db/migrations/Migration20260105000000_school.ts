@@ -120,6 +120,7 @@ export class Migration20260105000000_school extends Migration {
 
     this.addSql(`create table "bench_place" ("id" uuid not null, "cohort_id" uuid not null, "person_id" uuid not null, "state" text check ("state" in ('asked', 'offered', 'deposit-paid', 'confirmed', 'here', 'finished', 'waiting-list', 'moved', 'cancelled', 'stopped')) not null, "slot" int null, "created_at" timestamptz not null, "finished_at" timestamptz null, constraint "bench_place_pkey" primary key ("id"));`);
     this.addSql(`alter table "bench_place" add constraint "bench_place_cohort_id_person_id_unique" unique ("cohort_id", "person_id");`);
+    this.addSql(`create unique index "bench_place_slot_taken" on "bench_place" ("cohort_id", "slot") where "state" in ('offered', 'deposit-paid', 'confirmed', 'here');`);
 
     this.addSql(`create table "witness_call" ("id" uuid not null, "head_id" uuid not null, "point" varchar(20) not null, "told_by_id" uuid not null, "told_at" timestamptz not null, "wait_until" timestamptz not null, "seen_by_id" uuid null, "seen_at" timestamptz null, constraint "witness_call_pkey" primary key ("id"));`);
     this.addSql(`alter table "witness_call" add constraint "witness_call_head_id_point_unique" unique ("head_id", "point");`);

@@ -1,6 +1,6 @@
 import { Migration } from '@mikro-orm/migrations'
 
-/** What the schema builder cannot say: rows that may never change, and a bench that takes one person. */
+/** What the schema builder cannot say: rows that may never change. */
 export class Migration20260105000100_guards extends Migration {
   override async up(): Promise<void> {
     this.addSql(`create function refuse_change() returns trigger language plpgsql as $$ begin raise exception 'rows of % are never changed', tg_table_name using errcode = 'integrity_constraint_violation'; end $$;`)
@@ -8,11 +8,9 @@ export class Migration20260105000100_guards extends Migration {
       this.addSql(`create trigger ${table}_never_changes before update or delete on "${table}" for each row execute function refuse_change();`)
       this.addSql(`create trigger ${table}_never_emptied before truncate on "${table}" for each statement execute function refuse_change();`)
     }
-    this.addSql(`create unique index bench_place_slot_taken on "bench_place" ("cohort_id", "slot") where "state" in ('offered', 'deposit-paid', 'confirmed', 'here');`)
   }
 
   override async down(): Promise<void> {
-    this.addSql('drop index bench_place_slot_taken;')
     this.addSql('drop function refuse_change() cascade;')
   }
 }
