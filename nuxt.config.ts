@@ -10,6 +10,8 @@ export default defineNuxtConfig({
   ],
   // Our own code is imported by name, so that a linter sees every import.
   imports: { scan: false },
+  // Only .vue is a component: the small functions beside them are imported by name.
+  components: [{ path: '~/components', extensions: ['vue'] }],
   devtools: { enabled: false },
   app: {
     head: {
