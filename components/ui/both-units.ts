@@ -1,0 +1,28 @@
+import { convert } from '#shared/domain/units/convert'
+
+/** Units of the trade that are shown in pairs. What is not here (per cent, counts) has no other unit. */
+const otherUnit: Partial<Record<string, { unit: string, moreDecimals: number }>> = {
+  mm: { unit: 'in', moreDecimals: 1 },
+  in: { unit: 'mm', moreDecimals: -1 },
+  cfm: { unit: 'l/s', moreDecimals: 0 },
+  mm2: { unit: 'in2', moreDecimals: 3 },
+  cc: { unit: 'in3', moreDecimals: 2 },
+}
+
+/** A unit as it is written: mm2 is mm². */
+export function writtenUnit(unit: string): string {
+  return unit.replace(/([a-z])([23])(?=$|\/)/g, (_, letter: string, power: string) => `${letter}${power === '2' ? '²' : '³'}`).replace('inH2O', 'inH₂O').replace('deg', '°').trim()
+}
+
+/** The same value in the other unit people at the bench use, written out; null where there is none. `decimals` are those of the value as shown. */
+export function inOtherUnit(value: number, unit: string, decimals: number): string | null {
+  const other = otherUnit[unit]
+  if (!other || !Number.isFinite(value)) return null
+  return `${convert(value, unit, other.unit).toFixed(Math.max(0, decimals + other.moreDecimals))} ${writtenUnit(other.unit)}`
+}
+
+/** A number whose doubt is not known, with no more digits than it needs: at most three places, no trailing noughts from the conversion. */
+export function withoutDoubt(value: number): { value: string, decimals: number } {
+  const text = String(Number(value.toFixed(3)))
+  return { value: text === '-0' ? '0' : text, decimals: text.split('.')[1]?.length ?? 0 }
+}
