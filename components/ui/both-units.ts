@@ -11,14 +11,17 @@ const otherUnit: Partial<Record<string, { unit: string, moreDecimals: number }>>
 
 /** A unit as it is written: mm2 is mm². */
 export function writtenUnit(unit: string): string {
+  if (unit === '1' || unit === '-') return ''
   return unit.replace(/([a-z])([23])(?=$|\/)/g, (_, letter: string, power: string) => `${letter}${power === '2' ? '²' : '³'}`).replace('inH2O', 'inH₂O').replace('deg', '°').trim()
 }
 
 /** The same value in the other unit people at the bench use, written out; null where there is none. `decimals` are those of the value as shown. */
 export function inOtherUnit(value: number, unit: string, decimals: number): string | null {
-  const other = otherUnit[unit]
+  // A rubric's unit may say more than the unit: "mm proud".
+  const [base = ''] = unit.split(' ')
+  const other = otherUnit[base]
   if (!other || !Number.isFinite(value)) return null
-  return `${convert(value, unit, other.unit).toFixed(Math.max(0, decimals + other.moreDecimals))} ${writtenUnit(other.unit)}`
+  return `${convert(value, base, other.unit).toFixed(Math.max(0, decimals + other.moreDecimals))} ${writtenUnit(other.unit)}`
 }
 
 /** A number whose doubt is not known, with no more digits than it needs: at most three places, no trailing noughts from the conversion. */
