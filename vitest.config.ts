@@ -44,7 +44,7 @@ export default defineConfig(async () => ({
     projects: [
       plain('domain'),
       // Each file gets a database of its own, so files may run side by side; two cores bear two.
-      plain('server', { testTimeout: 30_000, hookTimeout: 60_000, maxWorkers: 2 }),
+      plain('server', { globalSetup: ['tests/server/global-setup.ts'], testTimeout: 30_000, hookTimeout: 60_000, maxWorkers: 2 }),
       plain('meta', { testTimeout: 30_000 }),
       ...(wantsApp() ? await app() : []),
     ],

@@ -13,7 +13,7 @@ await runCommand(async () => {
   const settings = readSettings(process.env)
   const secrets = readOrMakeSecrets(settings.dataDir)
   const forTests = process.argv.includes('--test')
-  const cluster = forTests ? testCluster(settings.dataDir, settings.databasePort + 1, secrets) : ownCluster(settings.dataDir, settings.databasePort, secrets)
+  const cluster = forTests ? testCluster(settings.dataDir, settings.testDatabasePort, secrets) : ownCluster(settings.dataDir, settings.databasePort, secrets)
   await startCluster(cluster, line => process.stderr.write(line + '\n'))
   const owner = { name: 'witness', password: secrets.databasePassword, mayCreateDatabases: forTests }
   process.stdout.write(await ensureDatabase(cluster, owner, 'witness_mark') + '\n')

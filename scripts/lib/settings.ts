@@ -10,6 +10,7 @@ export type Settings = {
   host: string
   webPort: number
   databasePort: number
+  testDatabasePort: number
   storagePort: number
   mailPort: number
   mailPagePort: number
@@ -37,6 +38,7 @@ export function readSettings(env: Env): Settings {
     host: env.HOST || '127.0.0.1',
     webPort: port('PORT', 3000),
     databasePort: port('PGPORT', 54329),
+    testDatabasePort: port('TEST_PGPORT', 54330),
     storagePort: port('STORAGE_PORT', 9000),
     mailPort: port('MAIL_PORT', 2525),
     mailPagePort: port('MAIL_PAGE_PORT', 8025),

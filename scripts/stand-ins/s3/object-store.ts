@@ -2,7 +2,7 @@ import { createHash } from 'node:crypto'
 import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
 import { S3Error } from './s3-error'
-import { syncFolder, writeDurably } from './write-durably'
+import { syncFolder, writeDurably } from '../write-durably'
 
 export type StoredMeta = {
   key: string
