@@ -8,6 +8,10 @@ export class Migration20260105000100_guards extends Migration {
       this.addSql(`create trigger ${table}_never_changes before update or delete on "${table}" for each row execute function refuse_change();`)
       this.addSql(`create trigger ${table}_never_emptied before truncate on "${table}" for each statement execute function refuse_change();`)
     }
+    // Grants say it too: the application's own role may add to the audit record and read it, nothing else.
+    for (const table of ['audit_event', 'audit_link', 'audit_seal']) this.addSql(`revoke update, delete, truncate on "${table}" from current_user;`)
+    // A link's foreign key locks the event it names, and PostgreSQL asks for the right to update one column for that; the trigger still refuses.
+    this.addSql('grant update ("id") on "audit_event" to current_user;')
   }
 
   override async down(): Promise<void> {
