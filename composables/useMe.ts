@@ -12,7 +12,7 @@ export function useMe() {
   }
   /** Where this person starts. */
   const home = computed(() => {
-    if (is('instructor')) return '/queue'
+    if (is('instructor')) return '/review'
     if (is('admin')) return '/people'
     if (is('safety')) return '/shop-board'
     return me.value ? '/bench' : '/login'

@@ -1,7 +1,8 @@
 import { z } from 'zod'
 import type { FlowRun, SheetHeader } from '../domain/airflow/flow-run'
-import type { CriterionResult } from '../domain/rubric/evidence'
-import type { CriterionState } from '../domain/rubric/criterion'
+import type { CastingCard } from '../domain/geometry/casting'
+import type { CriterionState, RubricStage } from '../domain/rubric/criterion'
+import type { CriterionResult, ReadingEvidence } from '../domain/rubric/evidence'
 import type { Side } from '../domain/units/port'
 
 /** What the server answers and the pages draw. Times are ISO strings; lengths mm unless a name says otherwise. */
@@ -25,7 +26,7 @@ export interface WantedView { kind: 'photo' | 'reading' | 'flow-sheet' | 'docume
 export interface PhotoView { id: string, view: string, viewName: string, cylinder: number | null, side: Side | null, spot: string | null, state: 'taken' | 'being measured' | 'cannot use' | 'measured' | 'reviewed', problem: string | null, thumbUrl: string | null, previewUrl: string | null, width: number | null, height: number | null, takenAt: string, addedBy: string }
 export interface ReadingView { id: string, quantity: string, cylinder: number | null, side: Side | null, at: Record<string, unknown> | null, spot: string | null, when: 'before' | 'after' | null, values: string[], unit: string, mean: number, baseUnit: string, expandedUncertainty: number, instrument: string, takenAt: string, voidedAt: string | null, addedBy: string }
 export interface SheetView {
-  id: string, version: number, kind: 'flow' | 'plate-log', state: 'raw' | 'read' | 'asked' | 'used' | 'set aside', filename: string, bench: string | null
+  id: string, uploadId: string, answers: Record<string, string>, version: number, kind: 'flow' | 'plate-log', state: 'raw' | 'read' | 'asked' | 'used' | 'set aside', filename: string, bench: string | null
   header: SheetHeader
   columns: { heading: string, meaning: string | null, unit: string | null, from: string }[]
   firstRows: string[][]
@@ -34,6 +35,8 @@ export interface SheetView {
   needs: { field: string, question: string, choices?: string[] }[]
   plateLog: unknown
 }
+/** What the pad needs to draw a gauge while figures are typed: the stage's criteria without their texts, and the casting. */
+export interface GaugeView { stage: RubricStage, casting: CastingCard, readings: ReadingEvidence[] }
 export interface DocumentView { id: string, filename: string, note: string, addedAt: string, url: string | null }
 
 export interface ResultView extends Omit<CriterionResult, 'criterion'> {
