@@ -39,6 +39,8 @@ export async function startS3({ dir, credentials, bucket, origins, host = '127.0
   const handle = async (request: IncomingMessage, response: ServerResponse): Promise<void> => {
     if (await answerFaults(faults, request, response)) return
     const requestId = randomUUID()
+    // A destroyed request forgets its socket.
+    const { socket } = request
     response.setHeader('x-amz-request-id', requestId)
     const url = new URL(request.url ?? '/', 'http://stand-in')
     try {
@@ -55,7 +57,7 @@ export async function startS3({ dir, credentials, bucket, origins, host = '127.0
         const half = Number(request.headers['content-length'] ?? 0) / 2
         let bytes = 0
         for await (const chunk of request as AsyncIterable<Buffer>) if ((bytes += chunk.length) >= half) break
-        request.socket.destroy()
+        socket.destroy()
         return
       }
       const answer = await route(request, response, url, cut)
@@ -63,8 +65,8 @@ export async function startS3({ dir, credentials, bucket, origins, host = '127.0
     }
     catch (thrown) {
       const error = thrown instanceof S3Error ? thrown : new S3Error(500, 'InternalError', 'We encountered an internal error. Please try again.')
-      if (!(thrown instanceof S3Error) && !request.socket.destroyed) console.error('storage stand-in:', thrown)
-      if (response.headersSent || request.socket.destroyed) {
+      if (!(thrown instanceof S3Error) && !socket.destroyed) console.error('storage stand-in:', thrown)
+      if (response.headersSent || socket.destroyed) {
         response.destroy()
         return
       }

@@ -8,7 +8,9 @@ import { fileTypeFromBuffer } from 'file-type'
  */
 export async function detectType(firstBytes: Uint8Array): Promise<string> {
   const head = firstBytes.subarray(0, 4096)
-  const known = await fileTypeFromBuffer(head).catch(() => undefined)
+  // The mark of UTF-16 is also how some sound files begin; only a text has no controls behind it.
+  const marked = head.length > 2 && hasUtf16Mark(head) && asText(head) !== null
+  const known = marked ? undefined : await fileTypeFromBuffer(head).catch(() => undefined)
   if (known && known.mime !== 'application/xml') return known.mime
   const text = asText(head)
   if (text === null) return 'application/octet-stream'
@@ -19,12 +21,13 @@ export async function detectType(firstBytes: Uint8Array): Promise<string> {
 
 /** Null when these cannot be characters of a text file. */
 function asText(head: Uint8Array): string | null {
-  const bom = head[0] === 0xff && head[1] === 0xfe ? 'utf-16le' : head[0] === 0xfe && head[1] === 0xff ? 'utf-16be' : null
-  if (bom) return new TextDecoder(bom).decode(head)
   // Windows-1252 gives every byte a character; what text never has are the controls.
-  const text = new TextDecoder('windows-1252').decode(head)
+  const encoding = !hasUtf16Mark(head) ? 'windows-1252' : head[0] === 0xff ? 'utf-16le' : 'utf-16be'
+  const text = new TextDecoder(encoding).decode(head)
   return hasControls(text) ? null : text
 }
+
+const hasUtf16Mark = (head: Uint8Array) => (head[0] === 0xff && head[1] === 0xfe) || (head[0] === 0xfe && head[1] === 0xff)
 
 function hasControls(text: string): boolean {
   for (let at = 0; at < text.length; at++) {
