@@ -82,7 +82,8 @@ async function writeWhileKilled(orm: MikroORM, url: string, { writers, events, k
         // Some transactions stay open a while: their rows become visible after later ones were sealed.
         if (number % 7 === 0) await wait(20 + Math.random() * 60)
       })
-      // Slow enough that every kill falls while events are still coming.
+      // Slow enough that every kill falls while events are still coming; a sealer needs about a second and a half to start.
+      await wait(Math.random() * 2 * 1500 * kills / (events / writers))
       while (left < events - ((killed + 1) / kills) * events && killed < kills) await wait(10)
     }
   }
