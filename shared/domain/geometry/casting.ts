@@ -44,6 +44,10 @@ export interface CastingCard {
   bore: number
   gasket_bore: number
   swept_cc_each: number
+  gasket_thickness_crushed?: number
+  deck_clearance?: number
+  piston_dish_cc?: number
+  piston_dome_cc?: number
   valves: Record<Side, ValveCard>
   intake_port: PortCard
   exhaust_port: PortCard
