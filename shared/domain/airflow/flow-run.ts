@@ -8,6 +8,8 @@ export interface FlowPoint {
   expandedUncertainty: number
   /** Pressure of the row as read, Pa; null when only the sheet's own pressure is known. */
   pressurePa: number | null
+  /** Share of the bench's range used by this reading, 0 to 1; absent or null where the sheet has no such column. */
+  rangeShare?: number | null
 }
 
 /** One flow run of one port as the program read it. Points rise with lift; a missing point is in `missing`, never a zero. */

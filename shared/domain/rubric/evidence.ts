@@ -43,6 +43,8 @@ export interface EvidenceSet {
   casting: CastingCard
   /** Op of the stage asked for. */
   op: number
+  /** Part of the stage that is due; says whether "before" or "after" readings count, and which criteria are judged. */
+  part: SubmissionPart
   /** Ports the part that is due covers: one for a first article, all for the rest. */
   ports: { cylinder: number, side: Side }[]
   readings: ReadingEvidence[]
@@ -56,11 +58,35 @@ export interface EvidenceSet {
   handAllowanceMm: number
 }
 
+/** Part of a stage a submission is of: before its first cut, its first article, or the rest of it. */
+export type SubmissionPart = 'before' | 'first' | 'rest'
+
 /** A reason a value cannot be had: shown to people, so a whole sentence. */
 export interface NotAssessed { notAssessed: string }
 
-/** What an evaluator answers for one port (or head, or cylinder): values by spot and lift, the worst of which decides; or why there is none. */
-export type Evaluation = { values: Evaluated[], finding?: string, fill?: Record<string, string> } | NotAssessed
+/** What the judge tells an evaluator when it asks for the figures of a sentence. */
+export interface FillContext { state: CriterionState, value: Evaluated, limit: number | null }
+
+/** What an evaluator found for one port (or head, or cylinder). */
+export interface Measured {
+  /** Values by spot and lift; the worst of those that share a band decides. Never empty. `liftShare` names the band a lift is for. */
+  values: (Evaluated & { liftShare?: number })[]
+  /** What is still to be read, in words for people. The rest was read, so what is lost beyond doubt already shows. */
+  missing?: string[]
+  /** Set where the rule is not a band but a verdict of its own (flow losses, completeness). */
+  verdict?: CriterionState
+  /** Ending of a feedback key that fits only this finding: "LowLifts", "Digits", "Ratio", "Top". */
+  finding?: string
+  /** Figures for the sentence beside {value}, {U}, {limit} and {where}; they win over those. */
+  fill?: (context: FillContext) => Record<string, string>
+  /** Spots (`at`) for which the sentences of one side would say something untrue; the plain ones serve. */
+  plainAt?: string[]
+  /** The criterion counts the readings themselves, so a reading that is missing is part of the value and not a gap in it. */
+  countsReadings?: boolean
+}
+
+/** What an evaluator answers: values, or why there is none. */
+export type Evaluation = Measured | NotAssessed
 
 /** One judged result: what the server stores as CriterionResult and the pages show. */
 export interface CriterionResult {
@@ -80,8 +106,11 @@ export interface CriterionResult {
   /** The sentence for the student, every brace filled. */
   text: string
   trace: Evaluated['trace']
-  /** Accept band this was judged against, for the gauge strip. */
-  band: { lo: number | null, hi: number | null, loKind: string, hiKind: string, softLo: number | null, softHi: number | null, borrowedFrom: string | null } | null
+  /**
+   * Accept band this was judged against, for the gauge strip. `beyond` tells an over-cut ("past": metal is gone or something leaks)
+   * from a not-yet-cut ("short": it can still be done) where the state is borderline or reject.
+   */
+  band: { lo: number | null, hi: number | null, loKind: string, hiKind: string, softLo: number | null, softHi: number | null, borrowedFrom: string | null, beyond?: 'past' | 'short' | null } | null
   /** True where a person read a value the program will later measure from the photo itself. */
   typedForPhoto: boolean
 }
@@ -94,5 +123,8 @@ export interface Judgement {
   word: 'not yet' | 'Sound' | 'Workable' | 'Rework'
 }
 
-export type Evaluator = (evidence: EvidenceSet, criterion: Criterion, port: { cylinder: number | null, side: Side | null }) => Evaluation
+/** What one result is of: a port, a cylinder (no side), the head (neither), or one side of the head whose cylinder nobody knows yet. */
+export interface JudgedUnit { cylinder: number | null, side: Side | null }
+
+export type Evaluator = (evidence: EvidenceSet, criterion: Criterion, unit: JudgedUnit) => Evaluation
 export type Judge = (stage: RubricStage, evidence: EvidenceSet) => Judgement

@@ -1,0 +1,39 @@
+import type { Evaluator } from '../evidence'
+import { extreme, notRead, spotValues } from '../spot-values'
+
+/** Every reading is judged and the worst decides. */
+export const atEachSpot: Evaluator = (evidence, criterion, unit) => {
+  const values = spotValues(evidence, criterion, unit)
+  return values.length === 0 ? notRead(criterion.quantity, unit) : { values }
+}
+
+/** The least reading is the value: thickness, gap, radius. */
+export const leastOfSpots: Evaluator = (evidence, criterion, unit) => {
+  const least = extreme(spotValues(evidence, criterion, unit), 'least')
+  return least === null ? notRead(criterion.quantity, unit) : { values: [least] }
+}
+
+/** The greatest reading is the value: a bow, a drop, a step. */
+export const greatestOfSpots: Evaluator = (evidence, criterion, unit) => {
+  const greatest = extreme(spotValues(evidence, criterion, unit), 'greatest')
+  return greatest === null ? notRead(criterion.quantity, unit) : { values: [greatest] }
+}
+
+/** Counts and areas add up over the spots; {where} names the spots that have any. */
+export const sumOfSpots: Evaluator = (evidence, criterion, unit) => {
+  const values = spotValues(evidence, criterion, unit)
+  const [first] = values
+  if (!first) return notRead(criterion.quantity, unit)
+  const found = values.filter(one => one.value > 0).map(one => one.at).filter((at): at is string => at !== null)
+  const value = values.reduce((sum, one) => sum + one.value, 0)
+  return {
+    values: [{
+      ...first,
+      value,
+      standardUncertainty: first.standardUncertainty === null ? null : Math.hypot(...values.map(one => one.standardUncertainty ?? 0)),
+      degreesOfFreedom: null,
+      at: found.length > 0 ? found.join(', ') : null,
+      trace: [...values.flatMap(one => one.trace), { what: 'sum over the spots', sum: values.map(one => one.value).join(' + '), gives: String(value) }],
+    }],
+  }
+}

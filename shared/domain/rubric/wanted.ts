@@ -1,0 +1,77 @@
+import { wallSpots } from '../geometry/wall-spots'
+import type { RubricStage } from './criterion'
+import { criteriaOfPart } from './covers'
+import { doesNotApplyBecause } from './does-not-apply'
+import type { EvidenceSet } from './evidence'
+import { wantItems, type WantItem } from './want-items'
+import { wantInWords } from './want-in-words'
+import { viewNames } from './words'
+
+/** One line of the Proof tray. */
+export interface WantedItem extends WantItem {
+  viewName: string | null
+  /** What to take or read, and where: "seat land at 1:30, cylinder 2 intake". */
+  title: string
+  /** Criteria that want it. */
+  criteria: string[]
+  /** Spots of the casting card still unread, where the want is a whole map or schedule; else empty. */
+  spotsLeft: string[]
+}
+
+/**
+ * The wanted proof of one part of a stage, with what is in: what the Proof tray shows and a refusal lists.
+ *
+ * The same want of several criteria stands once, with the largest count; wants of one criterion that differ by their note alone add up.
+ * In the order the rubric names them.
+ *
+ * Source: handbook 3.6.
+ */
+export function wantedOf(stage: RubricStage, evidence: EvidenceSet): WantedItem[] {
+  const merged = new Map<string, WantedItem>()
+  for (const criterion of criteriaOfPart(stage, evidence.part)) {
+    if (doesNotApplyBecause(criterion, evidence) !== null) continue
+    const own = new Map<string, WantItem>()
+    for (const item of wantItems(criterion, evidence)) {
+      const key = keyOf(item)
+      const before = own.get(key)
+      own.set(key, before ? { ...before, count: before.count + item.count, note: joinNotes(before.note, item.note) } : item)
+    }
+    for (const [key, item] of own) {
+      const before = merged.get(key)
+      if (!before) merged.set(key, { ...item, ...described(item, evidence), criteria: [criterion.id] })
+      else {
+        before.count = Math.max(before.count, item.count)
+        before.have = Math.max(before.have, item.have)
+        before.note = joinNotes(before.note, item.note)
+        before.criteria.push(criterion.id)
+      }
+    }
+  }
+  return [...merged.values()]
+}
+
+function keyOf(item: WantItem): string {
+  return [item.kind, item.view, item.quantity, item.cylinder, item.side, item.spot, item.when, item.kind === 'document' ? item.note : ''].join('|')
+}
+
+function joinNotes(one: string | null, other: string | null): string | null {
+  if (one === null || other === null || one.includes(other)) return one ?? other
+  return other.includes(one) ? other : `${one}; ${other}`
+}
+
+function described(item: WantItem, evidence: EvidenceSet): Pick<WantedItem, 'viewName' | 'title' | 'spotsLeft'> {
+  const viewName = item.view === null ? null : viewNames[item.view] ?? item.view
+  return { viewName, title: wantInWords(item), spotsLeft: spotsLeft(item, evidence) }
+}
+
+function spotsLeft(item: WantItem, evidence: EvidenceSet): string[] {
+  if (item.kind !== 'reading' || item.spot !== null || item.side === null) return []
+  const card = evidence.casting
+  const all = item.quantity === 'wall-thickness'
+    ? wallSpots(card).filter(one => one.side === item.side).map(one => one.spot)
+    : item.quantity === 'section-area' ? (item.side === 'intake' ? card.intake_port : card.exhaust_port).stations.map(station => `station ${station}`) : []
+  const read = evidence.readings.filter(reading => reading.quantity === item.quantity && reading.op === evidence.op && reading.side === item.side
+    && (item.cylinder === null || reading.cylinder === item.cylinder))
+  return all.filter(spot => !read.some(reading => reading.spot?.toLowerCase() === spot.toLowerCase()))
+}
+
