@@ -1,3 +1,5 @@
+import { sealAudit } from '../services/audit/seal-audit'
+import { deliverMail } from '../services/mail/deliver-mail'
 import type { App } from '../utils/app'
 import type { JobData, QueueName } from '../utils/queues'
 
@@ -5,7 +7,7 @@ import type { JobData, QueueName } from '../utils/queues'
 export const handlers: { [Name in QueueName]: (app: App, data: JobData[Name]) => Promise<void> } = {
   'score-submission': async () => undefined,
   'prepare-photo': async () => undefined,
-  'send-mail': async () => undefined,
-  'seal-audit': async () => undefined,
+  'send-mail': (app, { mailId }) => deliverMail(app, mailId),
+  'seal-audit': async (app, { reason }) => void await sealAudit(app.orm.em.fork(), reason),
   'clear-uploads': async () => undefined,
 }

@@ -83,12 +83,20 @@ export const reviewInput = z.object({
   decision: z.enum(['release', 'send-back', 'stop']),
   point: z.string().regex(/^(hold|witness)-\d$/).nullable().default(null),
   condition: cleanText(1000).optional(),
+  /** Versions of the other submissions the point covers, as the sheet showed them; any that moved makes the review stale. */
+  seenWith: z.array(z.object({ id: z.string().uuid(), version: z.number().int().min(1) }).strict()).max(50).default([]),
 }).strict()
 export type ReviewInput = z.infer<typeof reviewInput>
 
 export const stopInput = z.object({ where: someText(200), reason: someText(1000) }).strict()
+export type StopInput = z.infer<typeof stopInput>
+export const liftInput = z.object({ reason: someText(1000) }).strict()
+export type LiftInput = z.infer<typeof liftInput>
+export const pointCode = z.string().regex(/^(hold|witness)-\d$/, 'is not a point')
+export const pointParams = z.object({ id: z.string().uuid(), code: pointCode })
 export const password = z.string().min(10, 'at least 10 characters').max(200).refine(text => text.isWellFormed() && !text.includes('\0'), 'has characters that cannot be kept')
 export const setPasswordInput = z.object({ token: z.string().min(20).max(200), password }).strict()
 export const forgotInput = z.object({ email: z.string().trim().toLowerCase().email().max(254) }).strict()
-export const invitationInput = z.object({ name: someText(120), email: z.string().trim().toLowerCase().email().max(254), roles: z.array(z.enum(['student', 'instructor', 'admin', 'safety'])).min(1) }).strict()
+export const invitationInput = z.object({ name: someText(120), email: z.string().trim().toLowerCase().email().max(254), roles: z.array(z.enum(['student', 'instructor', 'admin', 'safety'])).min(1).max(4) }).strict()
+export type InvitationInput = z.infer<typeof invitationInput>
 export const signInInput = z.object({ email: z.string().trim().email('an e-mail address').max(254), password: z.string().min(1, 'your password').max(200) })

@@ -63,6 +63,12 @@ export const refusals = {
   override_outside: [422, 'That criterion is not part of what this point needs.'],
   override_not_allowed: [422, 'An override moves a state one step and cannot lift a stop.'],
   pin_outside: [422, 'A pin must be on a photo of this submission, inside the picture, and tied to one of its criteria.'],
+  words_needed: [422, 'Say in words why; the student reads it.'],
+  stop_not_found: [404, 'There is no such stop that you may lift.'],
+  stop_lifted: [409, 'This stop is lifted already.'],
+  stop_of_safety: [403, 'The safety officer stopped this; only the safety officer lifts it.'],
+  witness_not_told: [409, 'Nobody was told of this point yet.'],
+  page_unknown: [422, 'That is not the `next` of a page of this list.'],
   // rubric, compute
   must_unreachable: [422, 'A must of this rubric has no value that could be accepted.'],
   rubric_invalid: [422, 'The rubric has a mistake; it is named.'],
@@ -70,6 +76,7 @@ export const refusals = {
   compute_unknown: [404, 'There is no such quantity.'],
   // people
   email_taken: [409, 'There is an account with that e-mail already.'],
+  session_not_found: [404, 'There is no such sign-in of yours.'],
   job_not_found: [404, 'There is no such job.'],
 } as const satisfies Record<string, readonly [number, string]>
 

@@ -84,6 +84,8 @@ export interface ReviewSheetView {
   release: { allowed: boolean, refused: { criterion: string, cylinder: number | null, side: Side | null, at: string | null, state: string, why: string }[], needReason: { criterion: string, cylinder: number | null, side: Side | null }[], conditions: string[] }
   maySign: { may: boolean, why: string | null }
   signedBefore: { by: string, at: string }[]
+  /** Other submissions the point covers, decided together with this one; send their versions back as `seenWith`. */
+  others: { id: string, op: number, stageName: string, part: string, version: number, state: string, score: number | null, word: string | null }[]
 }
 
 export interface CurveSetView { cylinder: number | null, side: Side, runs: { label: string, stage: string, op: number, date: string | null, points: { liftMm: number, cfm28: number, expandedUncertainty: number }[], missing: { liftMm: number, reason: string }[] }[], changes: { liftMm: number, cfm: number, expandedUncertainty: number, percent: number, verdict: 'gain' | 'loss' | 'no clear change' }[] | null }
@@ -114,7 +116,19 @@ export interface BenchView {
 export interface InstrumentView { code: string, name: string, quantities: string[], expandedU: number, relative: boolean, unit: string, due: string | null }
 export interface LessonSummary { number: number, slug: string, title: string, module: string, ops: number[] }
 export interface LessonView extends LessonSummary { html: string, version: number, publishedAt: string }
+/** Who is held and for how long, worst first. */
+export interface ShopBoardView { items: { head: { id: string, number: string }, student: { id: string, name: string }, cohort: { code: string, name: string }, stops: { id: string, where: string, reason: string, by: string, at: string }[], waiting: { id: string, op: number, stageName: string, point: { code: string, name: string } | null, state: string, since: string, minutes: number, stopStands: boolean }[] }[] }
+export interface SessionView { id: string, createdAt: string, expiresAt: string, agent: string, thisOne: boolean }
+/** Work that did not come through, with what it said. */
+export interface StuckJobView { id: string, kind: string, state: 'failed' | 'waiting to be tried again', data: Record<string, unknown>, tries: number, problem: string, createdAt: string, lastAt: string | null }
 export interface Page<Item> { items: Item[], next: string | null }
 
 /** Keyset paging: `after` is the `next` of the page before. */
 export const pageQuery = z.object({ after: z.string().max(200).optional(), limit: z.coerce.number().int().min(1).max(100).default(25) })
+
+export const queueQuery = pageQuery.extend({
+  cohort: z.string().max(20).optional(),
+  point: z.string().max(20).optional(),
+  /** Only what the person may sign and has not signed. */
+  mine: z.enum(['true', 'false']).default('false').transform(text => text === 'true'),
+})
