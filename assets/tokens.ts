@@ -3,7 +3,7 @@ export type ColourName =
   | 'ink' | 'iron' | 'iron-mid' | 'edge' | 'line' | 'line-soft' | 'machined' | 'paper'
   | 'layout' | 'layout-deep' | 'layout-wash' | 'layout-fill' | 'bar-ink'
   | 'inside' | 'inside-wash' | 'close' | 'close-wash' | 'outside' | 'outside-wash' | 'outside-fill' | 'on-fill'
-  | 'band' | 'band-hatch' | 'band-soft' | 'tape' | 'tape-ink' | 'hazard' | 'hazard-edge'
+  | 'band' | 'band-hatch' | 'band-soft' | 'tape' | 'tape-ink' | 'hazard' | 'hazard-edge' | 'curve-b' | 'curve-c'
 
 /** Daylight, and print. */
 export const light: Record<ColourName, string> = {
@@ -35,6 +35,8 @@ export const light: Record<ColourName, string> = {
   'tape-ink': '#1b2023',
   'hazard': '#fdf7e6',
   'hazard-edge': '#c99a2e',
+  'curve-b': '#82296f',
+  'curve-c': '#0d6c7d',
 }
 
 /** A dim shop, or a phone at ten in the evening: ground almost as dark as the iron, states lifted rather than inverted. */
@@ -67,6 +69,8 @@ export const dark: Record<ColourName, string> = {
   'tape-ink': '#14181a',
   'hazard': '#2a2412',
   'hazard-edge': '#8a6d1d',
+  'curve-b': '#e39fda',
+  'curve-c': '#76cfdc',
 }
 
 /** "#1b2023" as "27 32 35", the form that lets one colour be used at any opacity. */

@@ -33,6 +33,8 @@ const drawn: [ColourName, ColourName[]][] = [
   ['inside', ['band', 'band-soft']],
   ['close', ['band', 'band-soft']],
   ['outside', ['band', 'band-soft']],
+  ['curve-b', ['paper']],
+  ['curve-c', ['paper']],
   ['tape', ['tape-ink']],
 ]
 
