@@ -20,8 +20,9 @@ const limit = { percent: 2.5, timesU: 2.5 }
 /**
  * Each inner point against the curve through the others.
  *
- * The curve is drawn through flow per mm of lift, which changes slowly where flow itself bends sharply, by PCHIP. The end points
- * have nothing beyond them and are not judged. A point that is off spoils the curve its neighbours are held against, so the worst
+ * Two curves are drawn by PCHIP, one through flow and one through flow per mm of lift, which changes slowly where flow itself
+ * bends sharply but bends where the lift zero is off; the one nearer to the point is used, so a point is off only if both say so.
+ * The end points have nothing beyond them and are not judged. A point that is off spoils the curve its neighbours are held against, so the worst
  * one is set aside and the rest are looked at again, until none is off.
  *
  * Units: mm, cfm at the one basis, per cent. Fewer than five points give none.
@@ -43,7 +44,10 @@ function innerResiduals(kept: readonly FlowPoint[]): CurveResidual[] {
   if (kept.length < 5) return []
   return kept.slice(1, -1).map((point) => {
     const others = kept.filter(other => other !== point)
-    const expected = point.liftMm * pchip(others.map(p => p.liftMm), others.map(p => p.cfm28 / p.liftMm)).at(point.liftMm)
+    const lifts = others.map(other => other.liftMm)
+    const throughFlow = pchip(lifts, others.map(other => other.cfm28)).at(point.liftMm)
+    const throughSlope = point.liftMm * pchip(lifts, others.map(other => other.cfm28 / other.liftMm)).at(point.liftMm)
+    const expected = Math.abs(point.cfm28 - throughFlow) < Math.abs(point.cfm28 - throughSlope) ? throughFlow : throughSlope
     const residualCfm = point.cfm28 - expected
     const percent = 100 * residualCfm / expected
     const offCurve = Math.abs(percent) > limit.percent && Math.abs(residualCfm) > limit.timesU * point.expandedUncertainty

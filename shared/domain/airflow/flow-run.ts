@@ -18,6 +18,8 @@ export interface FlowRun {
   side: Side | null
   points: FlowPoint[]
   missing: { liftMm: number, reason: string }[]
+  /** The single runs, each at the one basis, where `points` is the mean of several of one port; left out when there was one. */
+  repeats?: FlowPoint[][]
 }
 
 /** What the sheet says of its set-up. Null where the sheet is silent. SI and mm whatever the sheet was written in. */

@@ -15,8 +15,8 @@ export interface RatioToUsual {
   pressure: { usedInH2O: number, ratioExpected: number } | null
 }
 
-/** Test pressures in use, inH2O. 10.04 is 2.5 kPa. Source: handbook 4.2. */
-const usedPressures = [5, 10, 10.04, 15, 20, 25, 28]
+/** Test pressures in use, inH2O; 2.5 kPa is 10.04 and cannot be told from 10. Source: handbook 4.2. */
+const usedPressures = [5, 10, 15, 20, 25, 28]
 
 /**
  * Ratio of a run to the usual curve at every lift both have; null with fewer than four.

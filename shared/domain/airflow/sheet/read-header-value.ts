@@ -32,7 +32,7 @@ export function readHeaderNumber(text: string, kind: UnitKind, decimal: '.' | ',
   // The unit right behind the number is its own; else one in front of it, as in "Valve dia in 1.614".
   const behind = findUnitWord(text.slice(end).slice(0, 24), kind)
   const front = findUnitWord(text.slice(0, match.index), kind)
-  const unit = behind && /^[\s(\[]*$/.test(text.slice(end, end + behind.start)) ? behind.unit : front?.unit ?? behind?.unit ?? null
+  const unit = behind && /^[\s([]*$/.test(text.slice(end, end + behind.start)) ? behind.unit : front?.unit ?? behind?.unit ?? null
   return { value: typed.value, unit, nominal: /\bnominal\b/i.test(text), end }
 }
 
