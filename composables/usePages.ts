@@ -4,7 +4,8 @@ import { useApi } from './useApi'
 import { useRead } from './useRead'
 
 /** A list that comes a page at a time: the first for the first paint, `more` for the next. */
-export function usePages<Item>(path: string) {
+export function usePages<Item>(path: string | (() => string)) {
+  const pathNow = typeof path === 'string' ? () => path : path
   const api = useApi()
   const { data, failure, loading, refresh } = useRead<Page<Item>>(path)
   const later = shallowRef<Item[]>([])
@@ -19,7 +20,7 @@ export function usePages<Item>(path: string) {
   async function more() {
     if (!next.value || busy.value) return
     busy.value = true
-    const answer = await api.get<Page<Item>>(`${path}${path.includes('?') ? '&' : '?'}after=${encodeURIComponent(next.value)}`)
+    const answer = await api.get<Page<Item>>(`${pathNow()}${pathNow().includes('?') ? '&' : '?'}after=${encodeURIComponent(next.value)}`)
     if (answer.ok) {
       later.value = [...later.value, ...answer.value.items]
       next.value = answer.value.next
