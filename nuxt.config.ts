@@ -75,7 +75,8 @@ export default defineNuxtConfig({
   security: {
     headers: {
       contentSecurityPolicy: {
-        'img-src': ['\'self\'', 'data:', 'blob:', process.env.NUXT_STORAGE_PUBLIC_ENDPOINT ?? ''].filter(Boolean),
+        // server/plugins/05.storage-policy.ts adds the storage's origin, which is known only at start.
+        'img-src': ['\'self\'', 'data:', 'blob:'],
         'upgrade-insecure-requests': false,
       },
       permissionsPolicy: { camera: ['self'], fullscreen: ['self'] },
