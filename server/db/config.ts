@@ -12,6 +12,8 @@ export function dbConfig(clientUrl: string | undefined) {
     discovery: { disableDynamicFileAccess: true },
     metadataCache: { enabled: false },
     allowGlobalContext: false,
+    // An id is there as soon as its row is made: cookies, keys and audit subjects name rows before they are written.
+    processOnCreateHooksEarly: true,
     forceUtcTimezone: true,
     pool: { min: 0, max: 12 },
     schemaGenerator: { ignoreSchema: ['pgboss'] },
