@@ -27,7 +27,7 @@ export function useReadingPreview(submissionId: string, submission: Ref<Submissi
     const now = typed.value
     results.value = []
     if (!code.value || !gauges.value || !submission.value || !now.spot || !now.instrument || !now.values.length) return
-    results.value = code.value.previewReading({ ...gauges.value, op: submission.value.op, ports: submission.value.ports, want: now.spot, typed: now.values, unit: now.unit, instrument: now.instrument })
+    results.value = code.value.previewReading({ ...gauges.value, op: submission.value.op, part: submission.value.part, ports: submission.value.ports, want: now.spot, typed: now.values, unit: now.unit, instrument: now.instrument })
   })
   return { results }
 }
