@@ -113,6 +113,8 @@ export interface BenchView {
   fromInstructor: { by: string, at: string, text: string, submissionId: string } | null
 }
 
+/** One account, as the office sees it. */
+export interface PersonView { id: string, name: string, email: string, roles: MeView['roles'], cohorts: string[], invited: boolean }
 export interface InstrumentView { code: string, name: string, quantities: string[], expandedU: number, relative: boolean, unit: string, due: string | null }
 export interface LessonSummary { number: number, slug: string, title: string, module: string, ops: number[] }
 export interface LessonView extends LessonSummary { html: string, version: number, publishedAt: string }
