@@ -31,7 +31,7 @@ export function assignColumns(table: FoundTable, choices: ColumnChoices, profile
   return table.headings.flatMap((heading, index) => {
     const choice = choices[String(index)]
     const known = table.meanings[index] ?? null
-    const fromProfile = profile ? profileColumn(profile, heading) : null
+    const fromProfile = profile ? profileColumn(profile, heading) ?? onlyColumnOf(profile, known?.quantity) : null
     const quantity = choice?.quantity ?? known?.quantity ?? fromProfile?.quantity
     if (!quantity) return []
     const meaning: Heading = known ?? { quantity, unit: null, run: null, cylinder: null, side: null, statistic: null, basis: null, densityDone: false, pressure: null }
@@ -55,6 +55,12 @@ export function profileColumn(profile: BenchProfile, heading: string): { quantit
   const fold = (text: string) => text.toLowerCase().replace(/[^\p{L}\d]/gu, '')
   const name = Object.keys(profile.columns).find(key => fold(key) === fold(heading))
   return name === undefined ? null : profile.columns[name] ?? null
+}
+
+/** A bench that always writes one unit for a quantity writes it under a shorter heading too. */
+function onlyColumnOf(profile: BenchProfile, quantity: Heading['quantity'] | undefined): { quantity: Heading['quantity'], unit: SheetUnit | null } | null {
+  const alike = Object.values(profile.columns).filter(column => column.quantity === quantity)
+  return alike.length === 1 ? alike[0] ?? null : null
 }
 
 function unitInCells(table: FoundTable, index: number, quantity: Heading['quantity']): SheetUnit | null {

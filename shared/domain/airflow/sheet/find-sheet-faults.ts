@@ -102,7 +102,8 @@ function leakFindings(run: FlowRun, { header, zeroRowCfm28 }: FaultContext): She
     const rest = state === 'reject' ? 'That size of leak is cured, not taken off: clay, gasket, plug or seat, then rerun.' : 'It was taken off; grease the seat and look again if there is time.'
     findings.push({ code: 'leak-large', severity: state === 'reject' ? 'refuse' : 'ask', lifts: [0], text: `${where} ${leak.toFixed(1)} cfm at 28 inH2O, ${shareOfLowestPercent.toFixed(0)} % of the lowest lift. ${rest}` })
   }
-  else if (zero && zero.liftMm < -limits.liftZeroMm) {
+  // Only where the two lifts lie so low that the curve itself has not begun to bend.
+  else if (zero && zero.liftMm < -limits.liftZeroMm && zero.flowAtZeroCfm > 1.5 && (run.points[1]?.liftMm ?? Infinity) <= 0.08 * (header.valveMm ?? 0)) {
     findings.push({ code: 'leak-in-curve', severity: 'ask', lifts: [lowest.liftMm], text: `The line through the two lowest lifts still shows ${zero.flowAtZeroCfm.toFixed(1)} cfm at no lift (it meets no flow at ${zero.liftMm.toFixed(2)} mm). Air passes that did not pass the valve: look for a leak, then zero the dial again.` })
   }
   if (zero && zero.liftMm > limits.liftZeroMm) {

@@ -46,8 +46,8 @@ export function findTable(table: SheetTable, decimal: '.' | ',' | undefined, pro
       continue
     }
     const keyCell = cells[key] ?? ''
-    const isData = kind === 'flow' ? readCell(keyCell, decimal).kind === 'number' : /\d/.test(keyCell)
-    if (isData && !ended && cells.filter(cell => readCell(cell, decimal).kind === 'number').length >= 1) {
+    const isData = kind === 'flow' ? isNumberLike(keyCell, decimal) : /\d/.test(keyCell)
+    if (isData && !ended && cells.some(cell => isNumberLike(cell, decimal))) {
       found.rows.push({ cells, runLabel, cylinder })
       continue
     }
@@ -79,30 +79,39 @@ type Meaning = (text: string) => Heading | null
 interface Headings { headings: string[], meanings: (Heading | null)[], first: number, after: number, kind: FoundTable['kind'] }
 
 function findHeadings(rows: string[][], decimal: '.' | ',' | undefined, meaning: Meaning): Headings | null {
-  for (let at = 0; at < rows.length; at++) {
-    const cells = rows[at] ?? []
-    // Headings are words; a row with plain numbers in it is not one.
-    if (cells.filter(cell => cell !== '').length < 2 || cells.some(cell => /^[+-]?[\d.,]+$/.test(cell))) continue
-    for (let height = 1; height <= 3; height++) {
-      const block = rows.slice(at, at + height)
-      if (block.length < height || block.some(row => row.some(cell => /^[+-]?\d[\d.,]*$/.test(cell)) || row.every(cell => cell === ''))) break
+  // `last` is the row right above the numbers; as few rows above it are taken as make a heading.
+  for (let last = 0; last < rows.length; last++) {
+    if (!isHeadingRow(rows[last] ?? [])) continue
+    const next = firstFilled(rows, last + 1)
+    if (next === null) continue
+    for (let height = 1; height <= 3 && height <= last + 1; height++) {
+      const first = last - height + 1
+      const block = rows.slice(first, last + 1)
+      if (!block.every(isHeadingRow)) break
       const joined = joinHeadings(block)
       const meanings = joined.map(meaning)
       const kind = kindOf(meanings)
       if (!kind) continue
-      const next = firstFilled(rows, at + height)
-      if (next === null) continue
-      // More heading rows may follow: units, or names under a spanning label.
-      const nextRow = rows[next] ?? []
       const key = meanings.findIndex(one => one?.quantity === (kind === 'flow' ? 'lift' : 'date'))
-      const keyCell = nextRow[key] ?? ''
-      if (kind === 'flow' ? readCell(keyCell, decimal).kind !== 'number' : !/\d/.test(keyCell)) continue
-      const above = spanRow(rows[at - 1], block[0] ?? [])
+      const keyCell = rows[next]?.[key] ?? ''
+      if (kind === 'flow' ? !isNumberLike(keyCell, decimal) : !/\d/.test(keyCell)) continue
+      const above = spanRow(rows[first - 1], block[0] ?? [])
       const headings = above ? joinHeadings([above, ...block]) : joined
-      return { headings, meanings: headings.map(meaning), first: above ? at - 1 : at, after: at + height, kind }
+      return { headings, meanings: headings.map(meaning), first: above ? first - 1 : first, after: last + 1, kind }
     }
   }
   return null
+}
+
+/** Headings are words: at least two cells, none of them a plain number. */
+function isHeadingRow(cells: string[]): boolean {
+  return cells.filter(cell => cell !== '').length >= 2 && !cells.some(cell => /^[+-]?\d[\d.,]*$/.test(cell))
+}
+
+/** A number, or one that can be read two ways: its row is data all the same. */
+function isNumberLike(cell: string, decimal: '.' | ',' | undefined): boolean {
+  const { kind } = readCell(cell, decimal)
+  return kind === 'number' || kind === 'ambiguous'
 }
 
 function kindOf(meanings: (Heading | null)[]): FoundTable['kind'] | null {

@@ -19,9 +19,9 @@ const words: [HeaderField, RegExp][] = [
   ['humidity', /\b(?:rel(?:ative)?\.?\s+)?humidity\b|\br\.?\s?h\.?(?![a-z])|\bhumid\.?/i],
   ['density', /\b(?:air\s+)?density\b(?!\s*(?:corr|done|comp))|\brho\b|\u03C1/i],
   ['full-scale', /\bfull[\s-]*scales?\b|\branges?\s*(?:table|flows?|values?|in\b|\()|\bscales?\s*(?:table|in\b|\()|\branges\b|\bscales\b|\brange\b(?=\s*[:=]?\s*\d)/i],
-  ['basis', /\bflow\s+(?:basis|figures?|values?|readings?|is|are|as|brought|corrected|given|stated|shown)\b|\bbasis\b|\bflows?\s*(?=[:=])|\bdensity\s+corr\w*|\bcorrected\b|\bcorrection\b/i],
   ['lift-unit', /\blifts?\s+(?:units?|in\b|given in)\b/i],
-  ['flow-unit', /\bflow\s+units?\b/i],
+  ['flow-unit', /\bflows?\s+(?:units?|in\b|given in)/i],
+  ['basis', /\bflow\s+(?:basis|figures?|values?|readings?|is|are|as|brought|corrected|given|stated|shown)\b|\bbasis\b|\bflows?\s*(?=[:=])|\bdensity\s+corr\w*|\bcorrected\b|\bcorrection\b/i],
   ['pressure', /\b(?:test|bench|flow|set|target)\s*(?:pressure|press\.?|depression|dp|p\b)|\bpressure\s*(?:drop|difference|target|set)?\b|\bdepression\b|\bdp\b|\btested?\s+at\b|\brun\s+at\b/i],
   ['seat', /\b(?:valve\s+)?seat\s+angle\b|\bvalve\s+angle\b/i],
   ['land', /\b(?:valve\s+)?(?:seat\s+)?land(?:\s+width)?\b|\b(?:valve\s+)?seat\s+width\b/i],
@@ -41,14 +41,18 @@ const words: [HeaderField, RegExp][] = [
   ['head', /\b(?:head|part|casting|piece|job)\b\.?(?:\s*(?:no\b\.?|number|id|#|ref\b\.?))?/i],
 ]
 
+const everyWord = words.map(([field, pattern]): [HeaderField, RegExp] => [field, new RegExp(pattern, 'gi')])
+
 /** A label found in a text. */
 export interface FoundLabel { field: HeaderField, start: number, end: number }
 
 /** Every label of a text, left to right, none inside another. */
 export function findLabels(text: string): FoundLabel[] {
   const found: FoundLabel[] = []
-  for (const [field, pattern] of words) {
-    for (const match of text.matchAll(new RegExp(pattern, 'gi'))) {
+  // Plain numbers, the most of a sheet, hold no label.
+  if (!/\p{L}/u.test(text)) return found
+  for (const [field, pattern] of everyWord) {
+    for (const match of text.matchAll(pattern)) {
       const [start, end] = [match.index, match.index + match[0].length]
       if (!found.some(other => start < other.end && end > other.start)) found.push({ field, start, end })
     }

@@ -104,18 +104,18 @@ function readRuns(found: FoundTable, columns: ReadColumn[], raw: RawHeader, deci
   const notes: SheetFinding[] = [...closed.findings, ...findings]
   if (air === null && !densityDone) notes.push({ code: 'air-not-given', severity: 'note', lifts: [], text: 'The sheet gives no air temperature and pressure; air of 1.2041 kg/m3 was taken. A warm day or a low barometer is worth up to 3 %.' })
   if (reduced.some(one => one.series.length > 1)) notes.push({ code: 'several-runs', severity: 'note', lifts: [], text: `${Math.max(...reduced.map(one => one.series.length))} runs of one port: each reading was brought to 28 inH2O and one density first, then averaged.` })
-  if (columns.some(column => column.heading_.statistic === 'mean') && reduced.some(one => one.series.length > 1)) notes.push({ code: 'own-mean-ignored', severity: 'note', lifts: [], text: 'The sheet\'s own mean column was not used: it averages readings taken at different pressures.' })
+  if (columns.some(column => column.heading_.statistic === 'mean' && !groups.some(group => group.flow === column || group.reading === column)) && reduced.some(one => one.series.length > 1)) notes.push({ code: 'own-mean-ignored', severity: 'note', lifts: [], text: 'The sheet\'s own mean column was not used: it averages readings taken at different pressures.' })
   if (fullScaleCfm && raw.fullScale?.pressurePa && headerPressure && Math.abs(raw.fullScale.pressurePa / headerPressure - 1) > 0.02) {
     notes.push({ code: 'range-at-other-pressure', severity: 'ask', lifts: [], text: `The full-scale table is for ${(raw.fullScale.pressurePa / 249.08891).toFixed(1)} inH2O, the run is at ${(headerPressure / 249.08891).toFixed(1)}. Which holds?` })
   }
   const allNeeds = [...needs, ...closed.needs, ...portNeeds(series, raw)]
-  for (const run of reduced) notes.push(...findSheetFaultsOnce(run.run.points.length))
+  if (reduced.some(one => one.run.points.length < 3)) notes.push({ code: 'unreadable-cell', severity: 'refuse', lifts: [], text: 'Fewer than three lifts could be read: that is no curve.' })
   const faults = findSheetFaults(reduced, { header, zeroRowCfm28, casting: help.casting ?? null, baseline: help.baseline ?? null })
   return {
     kind: 'flow',
     header,
     runs: reduced.map(one => one.run),
-    columns: columns.map(toWire),
+    columns: columns.map(toWire).map(column => column.quantity === 'pressure' && column.unit === null && raw.pressure?.unit ? { ...column, unit: raw.pressure.unit, unitFrom: 'heading' } : column),
     findings: [...faults, ...notes].sort((a, b) => rank[a.severity] - rank[b.severity]),
     needs: allNeeds.filter((need, i) => allNeeds.findIndex(other => other.field === need.field) === i),
     plateLog: null,
@@ -123,11 +123,6 @@ function readRuns(found: FoundTable, columns: ReadColumn[], raw: RawHeader, deci
 }
 
 const rank = { refuse: 0, ask: 1, note: 2 } as const
-
-/** Fewer than three lifts make no curve. */
-function findSheetFaultsOnce(points: number): SheetFinding[] {
-  return points >= 3 ? [] : [{ code: 'unreadable-cell', severity: 'refuse', lifts: [], text: 'Fewer than three lifts could be read: that is no curve.' }]
-}
 
 function profileOfBench(table: SheetTable, decimal: '.' | ',' | undefined, profiles: readonly BenchProfile[]): BenchProfile | null {
   if (profiles.length === 0) return null

@@ -39,6 +39,8 @@ export interface RawHeader {
 }
 
 const textFields: readonly HeaderField[] = ['entry', 'pipe', 'operator', 'skip', 'bench']
+/** Fields whose value is one phrase: what follows a comma speaks of something else. */
+const endsWithPhrase: readonly HeaderField[] = ['head', 'cylinder', 'side', 'stage', 'date', 'pressure', 'barometer', 'temperature', 'humidity']
 const lengthFields = ['valve', 'stem', 'throat', 'land'] as const
 
 /**
@@ -90,7 +92,7 @@ class HeaderReader {
       return
     }
     if (field === 'air') {
-      this.readUnlabelled(value)
+      this.readLoose(value)
       return
     }
     // A value may hold further labels: "DNK-0152 cyl 1", "1.614 in, stem 5/16".
@@ -111,13 +113,17 @@ class HeaderReader {
     const labels = findLabels(cell)
     const first = labels[0]
     this.readUnlabelled(cell.slice(0, first?.start ?? cell.length))
+    // "41 mm valve, 8 mm stem" has each number in front of its label.
+    const last = labels[labels.length - 1]
+    const numbersFirst = first !== undefined && last !== undefined && labels.every(({ field }) => field === 'seat' || (lengthFields as readonly string[]).includes(field))
+      && /\d\s*(?:mm|in|inch(?:es)?|"|deg|°)?\s*$/i.test(cell.slice(0, first.start)) && !/\d/.test(cell.slice(last.end))
     const lengthUnits = new Set([...cell.matchAll(/\d\s*(mm|in|inch(?:es)?|")(?![a-z])/gi)].map(match => findUnitWord(match[1] ?? '', 'length')?.unit))
     labels.forEach((found, at) => {
       const end = labels[at + 1]?.start ?? cell.length
-      let value = cell.slice(found.end, end)
+      let value = numbersFirst ? cell.slice(labels[at - 1]?.end ?? 0, found.start) : cell.slice(found.end, end)
       // A text value in a sentence ends with its phrase.
       let rest = ''
-      if (textFields.includes(found.field)) {
+      if (textFields.includes(found.field) || endsWithPhrase.includes(found.field)) {
         const stop = /[,;](?!\d)|\s{2,}/.exec(value.replace(/^[\s:=]+/, match => '_'.repeat(match.length)))
         if (stop) [value, rest] = [value.slice(0, stop.index), value.slice(stop.index + 1)]
       }
@@ -146,7 +152,7 @@ class HeaderReader {
       rest = rest.replace(date.found, ' ')
     }
     // "20.3 C  1006 hPa  46 %" one number after another.
-    for (const part of rest.split(/\s{2,}|;|,(?!\d)|\//)) this.readMeasure(part)
+    for (const part of rest.split(/\s{2,}|;|,(?!\d)|\/|\band\b/)) this.readMeasure(part.trim())
     const head = /\b[A-Z]{2,5}-?\d{2,6}\b/.exec(rest)
     if (head && raw.head === null) {
       raw.head = head[0]
@@ -173,8 +179,8 @@ class HeaderReader {
       else if (pascals > 0 && pascals < 15_000) raw.pressure ??= water
       return
     }
-    if (findUnitWord(text, 'temperature') && /^\W*[+-]?[\d.,]+\s*(?:°|deg)?\s*[CFK]\b/i.test(text.trim())) raw.temperatureC ??= inUnit(readHeaderNumber(text, 'temperature', this.decimal), 'degC')
-    else if (/^\W*[\d.,]+\s*%/.test(text.trim())) raw.humidity ??= percentOf(readHeaderNumber(text, 'ratio', this.decimal))
+    if (/(?<![A-Za-z\d.,-])[+-]?\d[\d.,]*\s*(?:°|deg)?\s*[CFK]\b/i.test(text)) raw.temperatureC ??= inUnit(readHeaderNumber(text, 'temperature', this.decimal), 'degC')
+    else if (/^\W*[\d.,]+\s*%/.test(text)) raw.humidity ??= percentOf(readHeaderNumber(text, 'ratio', this.decimal))
   }
 
   private assign(field: HeaderField, whole: string, value: string): void {
@@ -207,7 +213,7 @@ class HeaderReader {
         if (raw.pipe === null && value.trim() !== '') raw.pipe = value.trim()
         return
       case 'head': {
-        const head = /\b[A-Za-z]{1,5}-?\d{2,6}\b|\b\d{3,6}\b/.exec(value)
+        const head = /\b[A-Za-z]{1,5}(?:-\d{1,6}|\d{2,6})\b|\b\d{3,6}\b/.exec(value)
         if (head && raw.head === null) {
           raw.head = head[0]
           const slash = /^\s*\/\s*(?:cyl\.?\s*)?(\d{1,2})\b/i.exec(value.slice(head.index + head[0].length))
@@ -281,6 +287,7 @@ class HeaderReader {
         return
       }
       case 'basis':
+        raw.flowUnit ??= /\d/.test(value.replace(/m3|ft3/gi, '')) ? null : findUnitWord(value, 'flow')?.unit ?? null
         this.readBasis(whole)
         return
       case 'lift-unit':

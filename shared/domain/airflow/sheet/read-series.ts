@@ -70,6 +70,7 @@ export function readSeries(table: FoundTable, columns: readonly ReadColumn[], gr
   const passes = new Map<string, { run: string | null, cylinder: number | null, side: Side | null, rows: { liftMm: number, cells: string[], group: ColumnGroup }[] }>()
   for (const { cells, runLabel, cylinder } of table.rows) {
     const liftCell = readCell(cells[lift.index] ?? '', context.decimal)
+    if (liftCell.kind === 'ambiguous') findings.push({ code: 'ambiguous-number', severity: 'ask', lifts: [], text: `${lift.heading}: ${liftCell.message}` })
     if (liftCell.kind !== 'number') continue
     const liftMm = lift.unit === 'lift/diameter' ? liftCell.value * (context.valveMm ?? 0) : convert(liftCell.value, lift.unit as string, 'mm')
     for (const group of groups) {
