@@ -50,6 +50,7 @@ export interface SubmissionView {
   head: HeadSummary
   op: number
   stageName: string
+  rubricVersion: number
   version: number
   part: 'before' | 'first' | 'rest'
   point: { code: string, name: string } | null

@@ -77,8 +77,10 @@ export const useOutbox = defineStore('outbox', () => {
     return () => filedListeners.delete(listener)
   }
 
-  const post: Post = (path, body, key) => $fetch(path, { method: 'POST', body: body as Record<string, unknown>, headers: { 'idempotency-key': key }, retry: false }) as Promise<never>
-  const get: Get = path => $fetch(path, { retry: false }) as Promise<never>
+  // The typed route map is too deep for paths made at run time.
+  const call = $fetch as unknown as (path: string, options: Record<string, unknown>) => Promise<never>
+  const post: Post = (path, body, key) => call(path, { method: 'POST', body, headers: { 'idempotency-key': key }, retry: false })
+  const get: Get = path => call(path, { retry: false })
 
   /** One item at a time, oldest first, until none is waiting or the network is gone. */
   async function run() {
