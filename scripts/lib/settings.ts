@@ -5,8 +5,6 @@ import { projectRoot } from './project-root'
 /** Where everything of this copy of the project lives and answers; each from the environment, each with a default. */
 export type Settings = {
   dataDir: string
-  /** The built application. */
-  outputDir: string
   host: string
   webPort: number
   databasePort: number
@@ -34,7 +32,6 @@ export function readSettings(env: Env): Settings {
   const given = (name: string) => env[name] || null
   return {
     dataDir: resolve(projectRoot, env.DATA_DIR || '.data'),
-    outputDir: resolve(projectRoot, env.OUTPUT_DIR || '.output'),
     host: env.HOST || '127.0.0.1',
     webPort: port('PORT', 3000),
     databasePort: port('PGPORT', 54329),

@@ -1,0 +1,3 @@
+import { runScript } from './lib/run-script.mjs'
+
+await runScript('develop')
