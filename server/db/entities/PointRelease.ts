@@ -55,11 +55,14 @@ export const HeadStop = defineEntity({
     by: () => p.manyToOne(User).ref(),
     at: instant(),
     criterion: p.string().length(10).nullable(),
+    /** Point it was called at, whose later release lifts it; null when it was called on the shop floor. */
+    point: p.string().length(20).nullable(),
     /** "pushrod wall, station 30, cylinder 4". */
     where: p.string().length(200),
     reason: p.text(),
     liftedBy: () => p.manyToOne(User).ref().nullable(),
     liftedAt: instant().nullable(),
+    liftReason: p.text().nullable(),
   },
   indexes: [{ properties: ['head', 'liftedAt'] }],
 })

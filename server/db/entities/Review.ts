@@ -1,4 +1,6 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
+import type { CriterionState } from '../../../shared/domain/rubric/criterion'
+import type { Side } from '../../../shared/domain/units/port'
 import { id, instant, real } from './column'
 import { CriterionResult } from './CriterionResult'
 import { Photo } from './Photo'
@@ -20,7 +22,7 @@ export const Review = defineEntity({
     condition: p.text().nullable(),
     feedback: p.text().default(''),
     /** Sentences as sent, by result: the proposal, or the instructor's edit. */
-    sentences: p.json<{ criterion: string, cylinder: number | null, side: string | null, at: string | null, text: string, edited: boolean }[]>(),
+    sentences: p.json<{ criterion: string, title: string, cylinder: number | null, side: Side | null, at: string | null, state: CriterionState, text: string, edited: boolean }[]>(),
     /** Reasons typed for borderline or not assessed musts that were released. */
     reasons: p.json<{ criterion: string, cylinder?: number | null, side?: string | null, reason: string }[]>(),
     readAt: instant().nullable(),

@@ -39,6 +39,7 @@ export const Submission = defineEntity({
     stopStands: p.boolean().default(false),
   },
   uniques: [{ properties: ['head', 'op', 'part', 'tryNumber'] }],
-  indexes: [{ properties: ['state', 'stopStands', 'askedAt', 'id'] }],
+  // The review queue in its order: what waits is few among all that ever was.
+  indexes: [{ name: 'submission_waiting', expression: `create index "submission_waiting" on "submission" ("stop_stands" desc, "asked_at", "id") where "state" in ('asked', 'scored')` }],
 })
 export type Submission = InferEntity<typeof Submission>

@@ -57,7 +57,7 @@ export class Migration20260105000000_school extends Migration {
     this.addSql(`create index "practice_head_cohort_id_index" on "practice_head" ("cohort_id");`);
 
     this.addSql(`create table "submission" ("id" uuid not null, "head_id" uuid not null, "op" int not null, "part" text check ("part" in ('before', 'first', 'rest')) not null, "point" varchar(20) null, "try_number" int not null default 1, "version" int not null default 1, "state" text check ("state" in ('draft', 'asked', 'scored', 'decided')) not null default 'draft', "ports" jsonb not null, "note" text not null default '', "started_by_id" uuid not null, "created_at" timestamptz not null, "asked_at" timestamptz null, "scored_version" int null, "scored_at" timestamptz null, "decided_at" timestamptz null, "decision" text check ("decision" in ('release', 'send-back', 'stop')) null, "score" double precision null, "word" varchar(20) null, "stop_stands" boolean not null default false, constraint "submission_pkey" primary key ("id"));`);
-    this.addSql(`create index "submission_state_stop_stands_asked_at_id_index" on "submission" ("state", "stop_stands", "asked_at", "id");`);
+    this.addSql(`create index "submission_waiting" on "submission" ("stop_stands" desc, "asked_at", "id") where "state" in ('asked', 'scored');`);
     this.addSql(`alter table "submission" add constraint "submission_head_id_op_part_try_number_unique" unique ("head_id", "op", "part", "try_number");`);
 
     this.addSql(`create table "score_set" ("id" uuid not null, "submission_id" uuid not null, "version" int not null, "score" double precision null, "word" varchar(20) not null, "rests_on" jsonb not null, "scored_at" timestamptz not null, constraint "score_set_pkey" primary key ("id"));`);
@@ -98,7 +98,7 @@ export class Migration20260105000000_school extends Migration {
     this.addSql(`create table "idempotency_key" ("id" uuid not null, "person_id" uuid not null, "key" uuid not null, "route" varchar(200) not null, "body_hash" varchar(64) not null, "status" int not null, "answer" jsonb not null, "at" timestamptz not null, constraint "idempotency_key_pkey" primary key ("id"));`);
     this.addSql(`alter table "idempotency_key" add constraint "idempotency_key_person_id_key_unique" unique ("person_id", "key");`);
 
-    this.addSql(`create table "head_stop" ("id" uuid not null, "head_id" uuid not null, "by_id" uuid not null, "at" timestamptz not null, "criterion" varchar(10) null, "where" varchar(200) not null, "reason" text not null, "lifted_by_id" uuid null, "lifted_at" timestamptz null, constraint "head_stop_pkey" primary key ("id"));`);
+    this.addSql(`create table "head_stop" ("id" uuid not null, "head_id" uuid not null, "by_id" uuid not null, "at" timestamptz not null, "criterion" varchar(10) null, "point" varchar(20) null, "where" varchar(200) not null, "reason" text not null, "lifted_by_id" uuid null, "lifted_at" timestamptz null, "lift_reason" text null, constraint "head_stop_pkey" primary key ("id"));`);
     this.addSql(`create index "head_stop_head_id_lifted_at_index" on "head_stop" ("head_id", "lifted_at");`);
 
     this.addSql(`create table "flow_sheet" ("id" uuid not null, "submission_id" uuid not null, "upload_id" uuid not null, "state" text check ("state" in ('raw', 'read', 'asked', 'used', 'set-aside')) not null default 'raw', "added_by_id" uuid not null, "added_at" timestamptz not null, constraint "flow_sheet_pkey" primary key ("id"));`);
