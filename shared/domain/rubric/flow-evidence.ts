@@ -70,7 +70,7 @@ export function valveOnSeat(evidence: EvidenceSet, header: SheetHeader, side: Si
   const card = evidence.casting.valves[side]
   const seatDeg = header.seatDeg ?? card.seat_deg
   return {
-    seatOuterMm: card.seat_od,
+    seatOuterMm: Math.min(card.seat_od, valveHeadMm(evidence, header, side)),
     stemMm: header.stemMm ?? card.stem,
     seatWidthMm: (header.landMm ?? 1.65) * Math.cos(seatDeg * Math.PI / 180),
     seatDeg,

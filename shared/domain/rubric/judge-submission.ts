@@ -5,7 +5,7 @@ import { criteriaOfPart } from './covers'
 import type { Criterion, CriterionState } from './criterion'
 import { decide, type Decision } from './decide'
 import { doesNotApplyBecause } from './does-not-apply'
-import type { CriterionResult, EvidenceSet, Judge, JudgedUnit, Measured } from './evidence'
+import type { CriterionResult, Evaluation, Evaluator, EvidenceSet, Judge, JudgedUnit, Measured } from './evidence'
 import { evaluatorOf } from './evaluators'
 import { missingProof } from './missing-proof'
 import { pickBands, type ResolvedBand } from './pick-band'
@@ -27,8 +27,6 @@ const takenFrom = new Set(['wall-thickness', 'guide-boss-width', 'bore-line-marg
  * `stageAsDue` first, so that what another stage owes at this point is judged with it.
  *
  * Source: handbook 3.1 to 3.6.
- *
- * @throws {RangeError} on evidence no person could have entered (a reading without values, a unit that is none)
  */
 export const judgeSubmission: Judge = (stage, evidence) => {
   const criteria = criteriaOfPart(stage, evidence.part)
@@ -55,11 +53,13 @@ function judgeUnit(criterion: Criterion, evidence: EvidenceSet, unit: JudgedUnit
   const registered = evaluatorOf(criterion)
   if (!registered) return [empty(criterion, unit, 'not-assessed', `Not assessed in this version, because nothing here measures ${criterion.quantity}.`)]
 
-  const evaluation = registered.evaluate(evidence, criterion, unit)
+  const evaluation = evaluated(registered.evaluate, criterion, evidence, unit)
   const missing = missingProof(criterion, evidence, unit)
   if ('notAssessed' in evaluation) {
+    // The reason has said already that there is no sheet.
+    const others = missing.filter(one => !/^(?:\d+ x )?flow sheet/.test(one))
     const typed = isTypedForPhoto(criterion) ? ' It is measured from the photo; until the program does that, type the reading.' : ''
-    return [empty(criterion, unit, 'not-assessed', `${evaluation.notAssessed}${typed}${missing.length > 0 ? ` Still wanted: ${missing.join('; ')}.` : ''}`)]
+    return [empty(criterion, unit, 'not-assessed', `${evaluation.notAssessed}${typed}${others.length > 0 ? ` Still wanted: ${others.join('; ')}.` : ''}`)]
   }
   const wanted = evaluation.countsReadings === true ? proofWithoutReadings(criterion, evidence, unit) : [...new Set([...evaluation.missing ?? [], ...missing])]
   return pickBands(criterion, evidence.casting.scope, unit.side).flatMap((band) => {
@@ -67,6 +67,20 @@ function judgeUnit(criterion: Criterion, evidence: EvidenceSet, unit: JudgedUnit
     const worst = worstOf(values, criterion, band, evaluation.verdict)
     return worst === null ? [] : [judged(criterion, evidence, unit, band, evaluation, worst, wanted)]
   })
+}
+
+/**
+ * Figures that contradict each other (a sheet whose stem is thicker than its throat) make a domain function throw. That is no value
+ * for this one criterion; the others are judged all the same.
+ */
+function evaluated(evaluate: Evaluator, criterion: Criterion, evidence: EvidenceSet, unit: JudgedUnit): Evaluation {
+  try {
+    return evaluate(evidence, criterion, unit)
+  }
+  catch (error) {
+    if (error instanceof RangeError) return { notAssessed: `The figures contradict each other: ${error.message}.` }
+    throw error
+  }
 }
 
 /** A reading that is missing is part of the value here; photos and papers are still proof. */

@@ -84,7 +84,9 @@ function countOf(item: Omit<WantItem, 'have'>, places: number, criterion: Criter
       return readings.filter(reading => sameSpot(reading.spot, item.spot)).length
     }
     case 'flow-sheet':
-      return evidence.sheets.filter(sheet => sheet.op === evidence.op).flatMap(sheet => sheet.runs).filter(run => isOf(run, unit)).length
+      return evidence.sheets.filter(sheet => sheet.op === evidence.op).flatMap(sheet => sheet.runs).filter(run => isOf(run, unit))
+        // Several runs of one port on one sheet are several runs.
+        .reduce((sum, run) => sum + (run.repeats?.length ?? 1), 0)
     case 'document': {
       const named = criterion.wants.map(want => want.note).filter(note => note !== undefined)
       return evidence.documents.filter(one => one.op === evidence.op && (sameSpot(one.note, item.note) || !named.some(note => note !== item.note && sameSpot(one.note, note)))).length

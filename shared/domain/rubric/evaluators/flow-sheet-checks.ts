@@ -26,10 +26,10 @@ function value(figures: { value: number, unit: string, liftMm?: number, at?: str
 /** Scatter of the runs of one port, each from a fresh set-up, pooled over the lifts. Source: handbook 3.5. */
 export const flowRepeat: Evaluator = (evidence, criterion, unit) => {
   const wanted = criterion.wants.find(want => want.kind === 'flow-sheet')?.count ?? 3
-  const runs = runsOf(evidence, evidence.op, unit)
+  const runs = runsOf(evidence, evidence.op, unit).flatMap(({ run }) => run.repeats === undefined ? [run] : run.repeats.map(points => ({ ...run, points })))
   if (runs.length === 0) return noSheet(unit)
   if (runs.length < wanted) return { notAssessed: `${runs.length} of ${wanted} runs of ${unitInWords(unit)}, each from a fresh set-up.` }
-  const repeat = flowRepeatability(runs.map(one => one.run))
+  const repeat = flowRepeatability(runs)
   if (!repeat) return { notAssessed: 'The runs have no lift in common.' }
   return {
     values: [value({ value: repeat.percent, unit: '%', trace: [
