@@ -10,7 +10,7 @@ const colours = Object.fromEntries(Object.keys(light).map(name => [name, `rgb(va
 export default {
   content: [],
   theme: {
-    colors: { ...colours, transparent: 'transparent', current: 'currentColor' },
+    colors: { ...colours, transparent: 'transparent', current: 'currentColor', white: '#fff', black: '#000' },
     borderRadius: { none: '0', sm: '2px', DEFAULT: '3px', full: '9999px' },
     fontFamily: {
       sans: ['"Archivo Variable"', '"Archivo Fallback"', 'system-ui', 'sans-serif'],

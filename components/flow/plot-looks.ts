@@ -14,3 +14,8 @@ export function lookOf(at: number, count: number): RunLook {
   if (at === count - 1) return { colour: 'text-layout', dash: '', width: 2.4, shape: 0 }
   return others[at % others.length] ?? { colour: 'text-iron-mid', dash: '6 4', width: 1.6, shape: 1 }
 }
+
+/** Places on a plot, to a tenth of a pixel: server and browser may differ in the last digit, and no eye sees it. */
+export function toTenth(from: number, to: number): (share: number) => number {
+  return share => Math.round((from + (to - from) * share) * 10) / 10
+}

@@ -1,7 +1,6 @@
 import type { CriterionState } from '#shared/domain/rubric/criterion'
-import { roundToDoubt } from '#shared/domain/units/round-to-doubt'
 import { stateWords } from '../ui/state-words'
-import { withoutDoubt, writtenUnit } from '../ui/both-units'
+import { withoutDoubt, writeWithDoubt, writtenUnit } from '../ui/both-units'
 import type { GaugeInput } from './gauge-layout'
 
 /**
@@ -18,7 +17,7 @@ export function gaugeWords(input: GaugeInput, unit: string, state: CriterionStat
 
   if (value === null) sentences.push('Not read.')
   else if (doubt !== null && doubt > 0) {
-    const rounded = roundToDoubt(value, doubt)
+    const rounded = writeWithDoubt(value, doubt)
     sentences.push(`${rounded.value} plus or minus ${rounded.doubt} ${written}`.trim() + '.')
   }
   else sentences.push(`${withoutDoubt(value).value} ${written}`.trim() + '.')
