@@ -127,7 +127,7 @@ export interface StuckJobView { id: string, kind: string, state: 'failed' | 'wai
 export interface Page<Item> { items: Item[], next: string | null }
 
 /** Keyset paging: `after` is the `next` of the page before. */
-export const pageQuery = z.object({ after: z.string().max(200).optional(), limit: z.coerce.number().int().min(1).max(100).default(25) })
+export const pageQuery = z.object({ after: z.string().max(400).refine(text => text.isWellFormed() && !text.includes('\0'), 'is not a page').optional(), limit: z.coerce.number().int().min(1).max(100).default(25) })
 
 export const queueQuery = pageQuery.extend({
   cohort: z.string().max(20).optional(),
