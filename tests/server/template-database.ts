@@ -43,7 +43,7 @@ export function ensureTemplate(url: string, dataDir: string): Promise<string> {
       await orm.migrator.up()
       await orm.close(true)
       const boss = await startBoss(sibling(url, half))
-      await boss.stop({ graceful: false, wait: true })
+      await boss.stop({ graceful: true, wait: true, timeout: 1000 })
       // A database somebody is connected to can be neither renamed nor copied.
       await client.query('select pg_terminate_backend(pid) from pg_stat_activity where datname = $1', [half])
       await client.query(`ALTER DATABASE ${half} RENAME TO ${name}`)

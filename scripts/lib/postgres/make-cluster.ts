@@ -52,7 +52,8 @@ export async function makeCluster(cluster: Cluster, binaries: string, user: Serv
       rmSync(half, { recursive: true, force: true })
       throw new Problem(`PostgreSQL could not make its data folder in ${dirname(home)}. It said:\n${ran.output.trim().split('\n').slice(-6).join('\n')}`)
     }
-    if (existsSync(home)) rmSync(home, { recursive: true, force: true })
+    // Also a link that points at nothing, which `exists` does not see.
+    rmSync(home, { recursive: true, force: true })
     renameSync(half, home)
   }
   if (home !== asked && !isLinkTo(asked, home)) {
