@@ -13,7 +13,8 @@ export interface FlowRepeatability {
 /**
  * Repeatability of runs of one port, pooled over the lifts they share; null when no lift was read twice.
  *
- * Every reading is taken at the one basis first, as a percentage of the mean at its lift.
+ * Every reading is taken at the one basis first, as a percentage of the mean at its lift. Each lift counts once, however many of
+ * its repeats were missed: a lift is one spot of the curve, and the school's figure (0.42 % on its practice sheet) is made so.
  *
  * Source: ISO 5725-2 and -6, r = 2.8 s (from memory); handbook 8.10.
  *
@@ -33,6 +34,7 @@ export function flowRepeatability(runs: readonly FlowRun[]): FlowRepeatability |
     return group.map(value => 100 * value / mean)
   })
   if (relative.length === 0) return null
-  const { standardDeviation, degreesOfFreedom } = pooledStandardDeviation(relative)
-  return { percent: standardDeviation, limitPercent: 2.8 * standardDeviation, degreesOfFreedom }
+  const { degreesOfFreedom } = pooledStandardDeviation(relative)
+  const percent = Math.sqrt(relative.reduce((sum, group) => sum + pooledStandardDeviation([group]).standardDeviation ** 2, 0) / relative.length)
+  return { percent, limitPercent: 2.8 * percent, degreesOfFreedom }
 }
