@@ -1,0 +1,73 @@
+import type { EntityManager } from '@mikro-orm/postgresql'
+import { EvidenceDocument } from '#server/db/entities/EvidenceDocument'
+import { FlowSheetReading } from '#server/db/entities/FlowSheet'
+import { Photo } from '#server/db/entities/Photo'
+import { Reading } from '#server/db/entities/Reading'
+import { Override } from '#server/db/entities/Review'
+import type { ScoreSet } from '#server/db/entities/ScoreSet'
+import type { EvidenceSet } from '#shared/domain/rubric/evidence'
+import type { FoundSubmission } from './find-submission'
+
+/** Name and version of the judgement; part of what every result says it rests on. */
+export const judgeMethod = 'judge 1'
+
+/** Hand allowance until a student's own is known, mm (handbook 3.1). */
+export const usualHandAllowanceMm = 0.15
+
+/**
+ * Everything a submission is judged by: its head's whole evidence as it stands, less what was voided, set aside or cannot be used,
+ * and the ids of those rows. A flow sheet counts by its newest reading. What an instructor gave for a judged criterion counts only
+ * within the submission it was given for.
+ *
+ * Run it in one snapshot with the submission's version, else the two may tell of different moments.
+ */
+export async function gatherEvidence(em: EntityManager, submission: FoundSubmission): Promise<{ evidence: EvidenceSet, restsOn: ScoreSet['restsOn'] }> {
+  const head = submission.head.$
+  const ofHead = { submission: { head: head.id } }
+  const readings = await em.find(Reading, { ...ofHead, voidedAt: null }, { populate: ['submission', 'instrument'], orderBy: { takenAt: 'asc', id: 'asc' } })
+  const photos = await em.find(Photo, { ...ofHead, setAsideAt: null, state: { $ne: 'cannot-use' } }, { populate: ['submission'], orderBy: { takenAt: 'asc', id: 'asc' } })
+  const documents = await em.find(EvidenceDocument, { ...ofHead, setAsideAt: null }, { populate: ['submission'], orderBy: { addedAt: 'asc', id: 'asc' } })
+  const sheets = await newestReadings(em, head.id)
+  const overrides = await em.find(Override, { result: { set: { submission: submission.id } } }, { populate: ['result'], orderBy: { at: 'desc' } })
+  const judged = new Map<string, EvidenceSet['judged'][number]>()
+  for (const one of overrides) {
+    const { criterion, cylinder, side } = one.result.$
+    const key = `${criterion}|${cylinder}|${side}`
+    if (!judged.has(key)) judged.set(key, { criterion, cylinder: cylinder ?? null, side: side ?? null, state: one.state, note: one.reason })
+  }
+  const casting = head.casting.$
+  return {
+    evidence: {
+      casting: casting.card,
+      op: submission.op,
+      part: submission.part,
+      ports: submission.ports,
+      readings: readings.map(one => ({
+        id: one.id, quantity: one.quantity, op: one.submission.$.op, cylinder: one.cylinder ?? null, side: one.side ?? null, spot: one.at?.spot ?? null, when: one.when ?? null,
+        values: one.values, unit: one.baseUnit, instrument: one.instrument.$.code, expandedU: one.expandedU, takenAt: one.takenAt.getTime(),
+      })),
+      photos: photos.map(one => ({ id: one.id, view: one.view, op: one.submission.$.op, cylinder: one.cylinder ?? null, side: one.side ?? null, spot: one.spot ?? null, takenAt: one.takenAt.getTime() })),
+      documents: documents.map(one => ({ id: one.id, op: one.submission.$.op, note: one.note })),
+      sheets: sheets.map(one => ({ id: one.sheet.id, op: one.sheet.$.submission.$.op, header: one.header, runs: one.runs, takenAt: one.sheet.$.addedAt.getTime() })),
+      judged: [...judged.values()],
+      acidCleaned: head.acidCleaned ?? null,
+      handAllowanceMm: head.student.$.handAllowanceMm ?? usualHandAllowanceMm,
+    },
+    restsOn: {
+      rubric: head.rubric.$.version,
+      casting: `${casting.code} v${casting.version}`,
+      method: judgeMethod,
+      readings: readings.map(one => one.id),
+      photos: photos.map(one => one.id),
+      documents: documents.map(one => one.id),
+      sheets: sheets.map(one => one.id),
+    },
+  }
+}
+
+/** The newest reading of every flow sheet of a head that is not raw nor set aside, oldest sheet first. */
+export async function newestReadings(em: EntityManager, headId: string) {
+  const all = await em.find(FlowSheetReading, { sheet: { submission: { head: headId }, state: { $nin: ['raw', 'set-aside'] } } }, { populate: ['sheet.submission'], orderBy: { sheet: { addedAt: 'asc', id: 'asc' }, version: 'desc' } })
+  const seen = new Set<string>()
+  return all.filter(one => !seen.has(one.sheet.id) && seen.add(one.sheet.id))
+}
