@@ -52,7 +52,7 @@ function reduceSeries(series: RawSeries, { airDensity, plateRatio, headerLeak }:
       return []
     }
     const { cfm28 } = flowToOneBasis({ flowCfm: point.flowCfm, leakCfm, pressurePa: point.flowPressurePa, airDensity, plateRatio })
-    return [{ liftMm: point.liftMm, cfm28, expandedUncertainty: flowUncertainty(cfm28, 'change'), pressurePa: point.rowPressurePa }]
+    return [{ liftMm: point.liftMm, cfm28, expandedUncertainty: flowUncertainty(cfm28, 'change'), pressurePa: point.rowPressurePa, ...(point.fraction === null ? {} : { rangeShare: point.fraction }) }]
   })
 }
 

@@ -62,7 +62,7 @@ export const leak: Evaluator = (evidence, _criterion, unit) => {
   const { leakCfm28 } = now.sheet.header
   const [lowest] = now.run.points
   if (leakCfm28 === null || !lowest) return { notAssessed: 'The sheet has no row with the valve shut.' }
-  const check = leakCheck(leakCfm28, lowest.cfm28 + leakCfm28)
+  const check = leakCheck(leakCfm28, lowest.cfm28)
   return {
     values: [value({ value: leakCfm28, unit: 'cfm', trace: [{ what: 'flow with the valve shut, at 28 inH2O', sum: 'as read', gives: `${leakCfm28.toFixed(2)} cfm, ${check.shareOfLowestPercent.toFixed(0)} % of the lowest lift` }] })],
     fill: () => ({ share: check.shareOfLowestPercent.toFixed(0) }),
