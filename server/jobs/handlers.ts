@@ -1,11 +1,12 @@
 import { sealAudit } from '../services/audit/seal-audit'
 import { deliverMail } from '../services/mail/deliver-mail'
+import { scoreSubmission } from '../services/submissions/score-submission'
 import type { App } from '../utils/app'
 import type { JobData, QueueName } from '../utils/queues'
 
 /** One handler a kind of work. Each may run twice without a second effect. */
 export const handlers: { [Name in QueueName]: (app: App, data: JobData[Name]) => Promise<void> } = {
-  'score-submission': async () => undefined,
+  'score-submission': (app, { submissionId }) => scoreSubmission(app, submissionId),
   'prepare-photo': async () => undefined,
   'send-mail': (app, { mailId }) => deliverMail(app, mailId),
   'seal-audit': async (app, { reason }) => void await sealAudit(app.orm.em.fork(), reason),

@@ -6,9 +6,11 @@ import { handlers } from './handlers'
 /** Attaches every handler. One job at a time a queue and process; each is completed or failed by its own id. */
 export async function startWorker(app: App): Promise<void> {
   for (const name of Object.keys(queues) as QueueName[]) {
-    await app.boss.work(name, { pollingIntervalSeconds: 0.5, batchSize: 1 }, async (jobs: Job<JobData[typeof name]>[]) => {
+    const worker = await app.boss.work(name, { pollingIntervalSeconds: 0.5, batchSize: 1 }, async (jobs: Job<JobData[typeof name]>[]) => {
       for (const job of jobs) await (handlers[name] as (app: App, data: JobData[typeof name]) => Promise<void>)(app, job.data)
     })
+    // Polling stays for what no signal tells: work put off, or put in while the listening connection was down.
+    app.signals.onWork(name, () => app.boss.notifyWorker(worker))
   }
   await app.boss.schedule('seal-audit', '* * * * *', { reason: 'minute' })
   await app.boss.schedule('clear-uploads', '17 3 * * *', {})

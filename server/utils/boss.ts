@@ -4,7 +4,8 @@ import { queues, type QueueName } from './queues'
 
 /** pg-boss, started, with every queue and its dead letter made. Handlers are attached by the worker alone. */
 export async function startBoss(databaseUrl: string): Promise<PgBoss> {
-  const boss = new PgBoss({ connectionString: databaseUrl, max: 4, maintenanceIntervalSeconds: 15, monitorStateIntervalSeconds: 30 })
+  // A killed worker's scoring is taken up again within its 8 seconds of patience and one turn of maintenance.
+  const boss = new PgBoss({ connectionString: databaseUrl, max: 4, maintenanceIntervalSeconds: 4, monitorStateIntervalSeconds: 30 })
   // Without a listener the process would end when the database stops for a moment.
   boss.on('error', fault => console.error('jobs:', fault.message))
   await withDatabaseLock(databaseUrl, async () => {

@@ -1,6 +1,7 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import type PgBoss from 'pg-boss'
 import type { JobData, QueueName } from './queues'
+import { signal } from './signals'
 
 /** Puts work in the queue inside the caller's transaction: it is there exactly when the change that needs it is. */
 export async function enqueue<Name extends QueueName>(app: { boss: PgBoss }, em: EntityManager, name: Name, data: JobData[Name], options: { startAfter?: number, singletonKey?: string } = {}): Promise<void> {
@@ -15,4 +16,6 @@ export async function enqueue<Name extends QueueName>(app: { boss: PgBoss }, em:
       },
     } as PgBoss.Db,
   })
+  // Heard at commit: workers look at once instead of at their next turn.
+  await signal(em, { kind: 'work', id: name })
 }

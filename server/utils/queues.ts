@@ -3,7 +3,7 @@
  * `expireInSeconds` is well above each handler's own time: a job that outlives it would run twice at once.
  */
 export const queues = {
-  'score-submission': { policy: 'standard', retryLimit: 8, retryDelay: 1, retryBackoff: true, expireInSeconds: 15 },
+  'score-submission': { policy: 'standard', retryLimit: 8, retryDelay: 1, retryBackoff: true, expireInSeconds: 8 },
   'prepare-photo': { policy: 'standard', retryLimit: 6, retryDelay: 2, retryBackoff: true, expireInSeconds: 120 },
   'send-mail': { policy: 'standard', retryLimit: 12, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'seal-audit': { policy: 'short', retryLimit: 3, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },

@@ -4,8 +4,11 @@ import type { EntityManager } from '@mikro-orm/postgresql'
 
 const channel = 'witness_mark'
 
-/** Something changed that a page may be following. Carries an id only; the page's stream reads the rest fresh. */
-export interface Signal { kind: 'submission', id: string }
+/**
+ * Something changed that a page may be following, or work was put in the queue `id` names. Carries an id only; whoever hears it
+ * reads the rest fresh.
+ */
+export interface Signal { kind: 'submission' | 'work', id: string }
 
 /** Tells every process, once this transaction commits. */
 export async function signal(em: EntityManager, what: Signal): Promise<void> {
@@ -14,6 +17,8 @@ export async function signal(em: EntityManager, what: Signal): Promise<void> {
 
 export interface Signals {
   onSubmission: (id: string, heard: () => void) => () => void
+  /** Work was put in a queue, by whichever process. */
+  onWork: (queue: string, heard: () => void) => () => void
   close: () => Promise<void>
 }
 
@@ -47,12 +52,13 @@ export function listen(databaseUrl: string): Signals {
   }
   connect().catch(again)
 
+  const on = (name: string, heard: () => void) => {
+    emitter.on(name, heard)
+    return () => emitter.off(name, heard)
+  }
   return {
-    onSubmission(id, heard) {
-      const name = `submission:${id}`
-      emitter.on(name, heard)
-      return () => emitter.off(name, heard)
-    },
+    onSubmission: (id, heard) => on(`submission:${id}`, heard),
+    onWork: (queue, heard) => on(`work:${queue}`, heard),
     async close() {
       closed = true
       await client?.end().catch(() => undefined)

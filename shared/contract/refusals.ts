@@ -42,6 +42,7 @@ export const refusals = {
   submission_not_found: [404, 'There is no such submission that you may see.'],
   submission_decided: [409, 'This submission is decided. What you add now belongs to the next try.'],
   submission_not_draft: [409, 'This submission was asked already.'],
+  too_many_streams: [429, 'You follow four submissions already. Close a page, then go on.'],
   submission_not_scored: [409, 'This submission is not scored yet. Wait a moment and look again.'],
   port_not_on_head: [422, 'This head has no such port.'],
   photo_seen_before: [409, 'This picture was used before. Take a new one.'],
