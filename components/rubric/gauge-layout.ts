@@ -52,7 +52,8 @@ export function layoutGauge(input: GaugeInput, width: number, pad: number): Gaug
   const hi = band?.hi ?? null
   const layout: GaugeLayout = { ticks: [], band: null, soft: [], guarded: [], limits: [], reading: null }
 
-  const first = Math.ceil(from / step - 1e-9)
+  // Without the + 0 a rule that starts at nought would start at minus nought.
+  const first = Math.ceil(from / step - 1e-9) + 0
   const last = Math.floor(to / step + 1e-9)
   for (let at = first; at <= last; at++) layout.ticks.push({ x: x(at * step), value: at * step, long: at % 5 === 0 })
 
