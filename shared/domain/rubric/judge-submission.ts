@@ -7,6 +7,7 @@ import { decide, type Decision } from './decide'
 import { doesNotApplyBecause } from './does-not-apply'
 import type { CriterionResult, Evaluation, Evaluator, EvidenceSet, Judge, JudgedUnit, Measured } from './evidence'
 import { evaluatorOf } from './evaluators'
+import { instructorGives } from './instructor-gives'
 import { missingProof } from './missing-proof'
 import { pickBands, type ResolvedBand } from './pick-band'
 import { score, statesByCriterion } from './score'
@@ -15,6 +16,9 @@ import { unitsOf } from './units-of'
 import { whichDoubt } from './which-doubt'
 import { word } from './word'
 import { wallOfSpot } from './wall-of-spot'
+
+/** A spot is a line, whatever its parts add up to. */
+const longestAt = 120
 
 /** Quantities of which metal may be taken until a least. */
 const takenFrom = new Set(['wall-thickness', 'guide-boss-width', 'bore-line-margin'])
@@ -47,15 +51,15 @@ export function judgeCriterion(criterion: Criterion, evidence: EvidenceSet): Cri
 }
 
 function judgeUnit(criterion: Criterion, evidence: EvidenceSet, unit: JudgedUnit): CriterionResult[] {
-  const given = givenState(criterion, evidence, unit)
-  if (given !== null) return [given]
-  if (criterion.kind === 'judged') return [empty(criterion, unit, 'not-assessed', 'The instructor gives this one.')]
+  const given = instructorGives(criterion) ? givenState(criterion, evidence, unit) : null
+  if (criterion.kind === 'judged') return [given ?? empty(criterion, unit, 'not-assessed', 'The instructor gives this one.')]
   const registered = evaluatorOf(criterion)
   if (!registered) return [empty(criterion, unit, 'not-assessed', `Not assessed in this version, because nothing here measures ${criterion.quantity}.`)]
 
   const evaluation = evaluated(registered.evaluate, criterion, evidence, unit)
   const missing = missingProof(criterion, evidence, unit)
   if ('notAssessed' in evaluation) {
+    if (given !== null) return [given]
     // The reason has said already that there is no sheet.
     const others = missing.filter(one => !/^(?:\d+ x )?flow sheet/.test(one))
     const typed = isTypedForPhoto(criterion) ? ' It is measured from the photo; until the program does that, type the reading.' : ''
@@ -133,7 +137,7 @@ function judged(criterion: Criterion, evidence: EvidenceSet, unit: JudgedUnit, b
   return {
     criterion: criterion.id,
     ...unit,
-    at: value.at,
+    at: value.at === null || value.at.length <= longestAt ? value.at : `${value.at.slice(0, longestAt - 1)}…`,
     liftMm: value.liftMm,
     state,
     value: value.value,
@@ -157,9 +161,8 @@ function metalLeftOf(criterion: Criterion, evidence: EvidenceSet, band: Resolved
   return metalLeft({ readingMm: value.value, expandedUncertainty: doubt, acceptLeastMm: band.lo, hardLeastMm: band.softLo ?? band.lo, handAllowanceMm: evidence.handAllowanceMm })
 }
 
-/** What an instructor gave: always for judged criteria, and for a photo's yes or no nobody can type a figure for. */
+/** What an instructor gave. */
 function givenState(criterion: Criterion, evidence: EvidenceSet, unit: JudgedUnit): CriterionResult | null {
-  if (criterion.kind !== 'judged' && !(criterion.kind === 'photo-measured' && criterion.unit === 'yes/no')) return null
   const given = evidence.judged.find(one => one.criterion === criterion.id
     && (one.cylinder === null || one.cylinder === unit.cylinder) && (one.side === null || one.side === unit.side))
   if (!given) return null

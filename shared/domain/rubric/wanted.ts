@@ -3,6 +3,7 @@ import type { RubricStage } from './criterion'
 import { criteriaOfPart } from './covers'
 import { doesNotApplyBecause } from './does-not-apply'
 import type { EvidenceSet } from './evidence'
+import { sameSpot } from './same-spot'
 import { wantItems, type WantItem } from './want-items'
 import { wantInWords } from './want-in-words'
 import { viewNames } from './words'
@@ -72,6 +73,6 @@ function spotsLeft(item: WantItem, evidence: EvidenceSet): string[] {
     : item.quantity === 'section-area' ? (item.side === 'intake' ? card.intake_port : card.exhaust_port).stations.map(station => `station ${station}`) : []
   const read = evidence.readings.filter(reading => reading.quantity === item.quantity && reading.op === evidence.op && reading.side === item.side
     && (item.cylinder === null || reading.cylinder === item.cylinder))
-  return all.filter(spot => !read.some(reading => reading.spot?.toLowerCase() === spot.toLowerCase()))
+  return all.filter(spot => !read.some(reading => sameSpot(reading.spot, spot)))
 }
 

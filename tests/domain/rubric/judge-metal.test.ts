@@ -190,6 +190,12 @@ describe('everything else with a reading', () => {
     expect(only(evidence, 'R-01')).toMatchObject({ state: 'borderline', text: 'Nearly: the last digit cannot be read.' })
     expect(only(nothing(10), 'R-01')).toMatchObject({ state: 'not-assessed', text: 'The instructor gives this one.' })
   })
+  it('lets the instructor give a photo\'s yes or no where nobody typed it', () => {
+    const judged = [{ criterion: 'L-06', cylinder: 1, side: null, state: 'accept' as const, note: 'hatched' }]
+    expect(only(nothing(40, { judged }), 'L-06')).toMatchObject({ state: 'accept', text: 'Hatched and initialled. Nobody can say they did not know.' })
+    const typed = nothing(40, { judged, readings: [reading('no-grind-hatching', null, 0, { op: 40, side: null, unit: 'yes/no' })] })
+    expect(only({ ...typed, photos: allPhotos(typed) }, 'L-06').state).toBe('reject')
+  })
   it('marks what a person typed for the photo', () => {
     const evidence = nothing(60, { readings: [reading('bore-line-margin', '8', 0.39, { op: 60, side: null, expandedU: 0.15 }), reading('bore-line-margin', '3', 0.9, { op: 60, side: null, expandedU: 0.15 })] })
     expect(only({ ...evidence, photos: allPhotos(evidence) }, 'C-01')).toMatchObject({ state: 'accept', value: 0.39, at: '8', typedForPhoto: true })

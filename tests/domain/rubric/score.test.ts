@@ -82,5 +82,6 @@ describe('an override', () => {
   it('gives a judged criterion its first state', () => {
     expect(ask(criterionOf('R-01'), 'not-assessed', 'accept')).toBeNull()
     expect(ask(criterionOf('V-01'), 'not-assessed', 'reject')).toBeNull()
+    expect(ask(criterionOf('L-06'), 'not-assessed', 'accept')).toBeNull()
   })
 })

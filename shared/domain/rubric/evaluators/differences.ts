@@ -4,6 +4,7 @@ import type { Criterion } from '../criterion'
 import type { EvidenceSet, Evaluator, JudgedUnit, ReadingEvidence } from '../evidence'
 import { readingsOf } from '../readings-of'
 import { readingValue } from '../reading-value'
+import { sameSpot } from '../same-spot'
 
 /**
  * One reading less another, each with its own doubt.
@@ -103,8 +104,8 @@ export const meanRadialCut: Evaluator = (evidence, criterion, unit) => {
 export const pressureDrop: Evaluator = (evidence, _criterion, unit) => {
   const read = readingsOf(evidence, { quantity: 'rig-pressure', unit })
   const values = ['', 'cold ', 'warm '].flatMap((state): Evaluated[] => {
-    const start = read.find(one => one.spot === `${state}0 min`)
-    const end = read.find(one => one.spot === `${state}10 min`)
+    const start = read.find(one => sameSpot(one.spot, `${state}0 min`))
+    const end = read.find(one => sameSpot(one.spot, `${state}10 min`))
     return start && end ? [difference('drop in ten minutes', start, end, 'kPa', state === '' ? null : state.trim())] : []
   })
   const start = read.find(one => one.spot !== null && /(?:^| )0 min$/.test(one.spot))
@@ -116,7 +117,7 @@ export const pressureDrop: Evaluator = (evidence, _criterion, unit) => {
 /** Throat and land after finishing against before: metal taken is positive in both. */
 export const shapeChange: Evaluator = (evidence, _criterion, unit) => {
   const earlier = (quantity: string, spot: string | null): ReadingEvidence | undefined => evidence.readings
-    .filter(one => one.quantity === quantity && one.op < evidence.op && one.cylinder === unit.cylinder && one.side === unit.side && one.spot === spot)
+    .filter(one => one.quantity === quantity && one.op < evidence.op && one.cylinder === unit.cylinder && one.side === unit.side && sameSpot(one.spot, spot))
     .sort((a, b) => b.op - a.op || b.takenAt - a.takenAt)[0]
   const values = ['throat-diameter', 'seat-land'].flatMap(quantity => readingsOf(evidence, { quantity, unit }).flatMap((now): Evaluated[] => {
     const before = earlier(quantity, now.spot)

@@ -32,8 +32,14 @@ export const sumOfSpots: Evaluator = (evidence, criterion, unit) => {
       value,
       standardUncertainty: first.standardUncertainty === null ? null : Math.hypot(...values.map(one => one.standardUncertainty ?? 0)),
       degreesOfFreedom: null,
-      at: found.length > 0 ? found.join(', ') : null,
+      at: found.length > 0 ? listed(found) : null,
       trace: [...values.flatMap(one => one.trace), { what: 'sum over the spots', sum: values.map(one => one.value).join(' + '), gives: String(value) }],
     }],
   }
+}
+
+/** Spots in one breath, but no longer than a line. */
+function listed(spots: readonly string[]): string {
+  const few = spots.slice(0, 4)
+  return spots.length > few.length ? `${few.join(', ')} and ${spots.length - few.length} more` : few.join(', ')
 }

@@ -5,6 +5,7 @@ import type { EvidenceSet, Evaluation, Evaluator, JudgedUnit, Measured } from '.
 import { readingsOf } from '../readings-of'
 import { readingValue } from '../reading-value'
 import { extreme, notRead, spotValues } from '../spot-values'
+import { sameSpot } from '../same-spot'
 
 /** Directions the throat is read in. */
 const directions = ['12-6', '2-8', '4-10']
@@ -63,11 +64,11 @@ function outOfRound(read: readonly Evaluated[]): Evaluation {
 /** Six readings a port, the two depths of each direction alike. */
 function allSix(evidence: EvidenceSet, criterion: Criterion, unit: JudgedUnit): Measured | { notAssessed: string } {
   const wanted = criterion.wants.find(want => want.quantity === criterion.quantity)?.places ?? []
-  const read = spotValues(evidence, { ...criterion, unit: 'mm' }, unit).filter(one => wanted.includes(one.at ?? ''))
+  const read = spotValues(evidence, { ...criterion, unit: 'mm' }, unit).filter(one => wanted.some(place => sameSpot(place, one.at)))
   if (read.length === 0) return notRead(criterion.quantity, unit)
   const pairs = directions.flatMap((direction) => {
-    const upper = read.find(one => one.at === `${direction} upper`)
-    const lower = read.find(one => one.at === `${direction} lower`)
+    const upper = read.find(one => sameSpot(one.at, `${direction} upper`))
+    const lower = read.find(one => sameSpot(one.at, `${direction} lower`))
     return upper && lower ? [{ direction, upper: upper.value, lower: lower.value, differs: Math.abs(upper.value - lower.value) }] : []
   })
   const worst = [...pairs].sort((a, b) => b.differs - a.differs)[0]
