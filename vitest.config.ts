@@ -33,6 +33,7 @@ const app = async (): Promise<TestProjectConfiguration[]> => [
     test: {
       name: 'app',
       include: ['tests/app/**/*.test.ts'],
+      setupFiles: ['tests/app/setup.ts'],
       environment: 'nuxt',
       environmentOptions: { nuxt: { rootDir: root, domEnvironment: 'happy-dom' } },
     },

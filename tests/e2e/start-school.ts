@@ -12,6 +12,7 @@ import { readOrMakeSecrets } from '../../scripts/lib/secrets'
 import { readSettings } from '../../scripts/lib/settings'
 import { applicationEnv, startStack, startStandIns, type Stack, type StackOptions, type StandIns } from '../../scripts/lib/start-stack'
 import { withFileLock } from '../../scripts/lib/with-file-lock'
+import type { S3Settings } from '../../server/adapters/storage/s3'
 
 export type School = {
   url: string
@@ -20,6 +21,8 @@ export type School = {
   s3: NonNullable<StandIns['s3']>
   mail: NonNullable<StandIns['mail']>
   databaseUrl: string
+  /** Settings for a storage client of the test's own. */
+  storage: S3Settings
   stop: () => Promise<void>
 }
 
@@ -82,8 +85,13 @@ export async function startSchool(name: string, until: string | null): Promise<S
     await close()
     throw thrown
   })
+  const env = applicationEnv(own)
   return {
     url: stack.url, stack, s3, mail, databaseUrl: own.databaseUrl,
+    storage: {
+      endpoint: s3.url, publicEndpoint: s3.url, region: env.NUXT_STORAGE_REGION ?? '', bucket: env.NUXT_STORAGE_BUCKET ?? '',
+      accessKey: secrets.storageAccessKey, secretKey: secrets.storageSecretKey,
+    },
     async stop() {
       await stack.stop()
       await close()
