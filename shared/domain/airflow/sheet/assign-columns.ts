@@ -3,6 +3,7 @@ import { unitKinds } from './heading-words'
 import type { FoundTable } from './find-table'
 import { readCell } from './read-cell'
 import { findUnitWord } from './unit-words'
+import { unitTable } from '../../units/unit-table'
 import type { BenchProfile, ColumnChoices, SheetColumn, SheetUnit } from './sheet-reading'
 
 /** A column with what its heading says beside the wire fields. */
@@ -37,7 +38,7 @@ export function assignColumns(table: FoundTable, choices: ColumnChoices, profile
     const meaning: Heading = known ?? { quantity, unit: null, run: null, cylinder: null, side: null, statistic: null, basis: null, densityDone: false, pressure: null }
     const fromCells = unitInCells(table, index, quantity)
     const fromHeader = quantity === 'lift' ? headerUnits.lift : quantity === 'flow' ? headerUnits.flow : null
-    const [unit, unitFrom] = choice?.unit
+    const [unit, unitFrom] = choice?.unit && fitsQuantity(choice.unit, quantity)
       ? [choice.unit, 'choice' as const]
       : known?.unit
         ? [known.unit, 'heading' as const]
@@ -55,6 +56,17 @@ export function profileColumn(profile: BenchProfile, heading: string): { quantit
   const fold = (text: string) => text.toLowerCase().replace(/[^\p{L}\d]/gu, '')
   const name = Object.keys(profile.columns).find(key => fold(key) === fold(heading))
   return name === undefined ? null : profile.columns[name] ?? null
+}
+
+/** Whether a unit is of a kind the quantity can be in; a choice that is not is passed over, and the question stays. */
+function fitsQuantity(unit: SheetUnit, quantity: Heading['quantity']): boolean {
+  return (unitKinds[quantity] ?? []).some((kind) => {
+    if (unit === 'percent' || unit === 'thousandths') return kind === 'ratio'
+    if (unit === 'lift/diameter') return kind === 'length'
+    if (!Object.hasOwn(unitTable, unit)) return false
+    const { dimension } = unitTable[unit]
+    return kind === 'flow' ? dimension === 'volume-flow' || dimension === 'mass-flow' : dimension === kind
+  })
 }
 
 /** A bench that always writes one unit for a quantity writes it under a shorter heading too. */

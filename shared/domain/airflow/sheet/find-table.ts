@@ -55,7 +55,10 @@ export function findTable(table: SheetTable, decimal: '.' | ',' | undefined, pro
     if (/^(?:total|sum|mean|average|avg|min|max|spread|sd|std|s\.d\.|count|n\s*=|gain|diff)/i.test(text)) continue
     const run = /^\W*(?:run|repeat|set-?up|pass|sweep|trial)\W*(?:no\.?\s*)?(\d{1,2}|[a-c]|down|up)\b/i.exec(text)
     const cyl = /^\W*cyl(?:inder)?\W*(\d{1,2})\b/i.exec(text)
-    if (run || cyl) {
+    // A name over a block has numbers under it; "Cylinder: 2" among other lines is header.
+    const below = firstFilled(rows, at + 1)
+    const overBlock = below !== null && (sameHeadings(rows[below] ?? [], headings) || (kind === 'flow' && isNumberLike(rows[below]?.[key] ?? '', decimal)))
+    if ((run || cyl) && overBlock) {
       if (run) runLabel = (run[1] ?? '').toLowerCase()
       if (cyl) cylinder = Number(cyl[1])
       ended = false
@@ -83,7 +86,7 @@ function findHeadings(rows: string[][], decimal: '.' | ',' | undefined, meaning:
   for (let last = 0; last < rows.length; last++) {
     if (!isHeadingRow(rows[last] ?? [])) continue
     const next = firstFilled(rows, last + 1)
-    if (next === null) continue
+    if (next === null || !(rows[next] ?? []).some(cell => isNumberLike(cell, decimal))) continue
     for (let height = 1; height <= 3 && height <= last + 1; height++) {
       const first = last - height + 1
       const block = rows.slice(first, last + 1)

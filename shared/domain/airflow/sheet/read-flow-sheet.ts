@@ -42,12 +42,13 @@ export interface SheetHelp {
  * Units: the answer is in mm, cfm at 28 inH2O and 1.2041 kg/m3, Pa, °C, hPa, per cent.
  * Source: handbook 4.
  */
-export function readFlowSheet(table: SheetTable, help: SheetHelp = {}): SheetReading {
+export function readFlowSheet(given: SheetTable, help: SheetHelp = {}): SheetReading {
+  const table = { rows: given.rows.slice(0, limits.rows).map(row => row.slice(0, limits.columns).map(cell => cell.slice(0, limits.characters))) }
   const guessed = findDecimalSign(table)
   const profile = help.profile ?? profileOfBench(table, guessed, help.profiles ?? [])
   const decimal = guessed ?? profile?.decimal
   const found = findTable(table, decimal, profile ? heading => profileMeaning(profile, heading) : undefined)
-  const raw = readHeader(found ? found.rest : table.rows, decimal)
+  const raw = readHeader((found ? found.rest : table.rows).slice(0, limits.headerRows), decimal)
   if (raw.bench === null && profile) raw.bench = profile.bench
   const answers = help.answers ?? {}
   applyAnswers(raw, answers)
@@ -70,11 +71,12 @@ function readRuns(found: FoundTable, columns: ReadColumn[], raw: RawHeader, deci
   const air = airOf(raw)
   const densityDone = raw.basis.densityDone ?? (groups.some(group => group.flow?.heading_.densityDone) || (profile?.densityCorrected ?? false))
   const measuredDensity = air ?? referenceBasis.densityKgPerM3
-  const headerPressure = inUnit(raw.pressure, 'Pa') ?? (profile?.pressure ? convert(profile.pressure.value, profile.pressure.unit, 'Pa') : null)
+  const headerPressure = positive(inUnit(raw.pressure, 'Pa')) ?? (profile?.pressure ? convert(profile.pressure.value, profile.pressure.unit, 'Pa') : null)
   const fullScaleCfm = fullScaleOf(raw, profile, measuredDensity)
   const { series, findings, needs } = readSeries(found, columns, groups, {
+    mostLifts: limits.lifts,
     decimal,
-    valveMm: inUnit(raw.lengths.valve ?? null, 'mm'),
+    valveMm: positive(inUnit(raw.lengths.valve ?? null, 'mm')),
     airDensity: measuredDensity,
     pressurePa: headerPressure,
     pressureUnit: raw.pressure?.unit ?? profile?.pressure?.unit ?? null,
@@ -121,6 +123,9 @@ function readRuns(found: FoundTable, columns: ReadColumn[], raw: RawHeader, deci
     plateLog: null,
   }
 }
+
+/** A flow sheet is a page. What is larger is read this far and no further, so that no file can hold the program up. */
+const limits = { rows: 5000, columns: 64, characters: 400, headerRows: 200, lifts: 200 }
 
 const rank = { refuse: 0, ask: 1, note: 2 } as const
 
@@ -222,7 +227,7 @@ function leakOf(raw: RawHeader, fullScale: Record<string, number> | null, densit
 function closeHeader(raw: RawHeader, profile: BenchProfile | null, series: readonly RawSeries[], pressurePa: number | null): { header: SheetHeader, findings: SheetFinding[], needs: SheetNeed[] } {
   const findings: SheetFinding[] = []
   const needs: SheetNeed[] = []
-  const millimetres = (field: 'valve' | 'stem' | 'throat' | 'land') => inUnit(raw.lengths[field] ?? null, 'mm')
+  const millimetres = (field: 'valve' | 'stem' | 'throat' | 'land') => positive(inUnit(raw.lengths[field] ?? null, 'mm'))
   const sizes = { valve: millimetres('valve'), stem: millimetres('stem') }
   for (const [field, name] of [['valve', 'valve head diameter'], ['stem', 'stem diameter']] as const) {
     const written = raw.lengths[field]
@@ -241,11 +246,15 @@ function closeHeader(raw: RawHeader, profile: BenchProfile | null, series: reado
   const nominal = raw.plateNominal ?? (profile?.plateNominal ? { value: profile.plateNominal.value, unit: profile.plateNominal.unit, nominal: true, end: 0 } : null)
   let plateRatio = 1
   if (today !== null && nominal === null) needs.push({ field: 'plate-nominal', question: 'The sheet gives a plate reading. What is the plate\'s nominal flow, with its unit?' })
-  else if (today !== null && nominal !== null && nominal.value > 0) {
+  else if (today !== null && nominal !== null) {
     const same = today.unit === null || nominal.unit === null || today.unit === nominal.unit
-    plateRatio = same ? today.value / nominal.value : convert(today.value, today.unit as string, nominal.unit as string) / nominal.value
+    const inCfm = (flow: { value: number, unit: SheetUnit | null }) => same || flow.unit === null ? flow.value : toCfm(flow.value, flow.unit, referenceBasis.densityKgPerM3)
+    const ratio = inCfm(today) / inCfm(nominal)
+    // Half or double is no bench: the two figures are not of one plate, or one is not a plate reading.
+    if (ratio > 0.5 && ratio < 2) plateRatio = ratio
+    else findings.push({ code: 'plate-out', severity: 'refuse', lifts: [], text: `The plate reads ${today.value} against a nominal of ${nominal.value}: those two cannot be of one plate in one unit. Check both.` })
   }
-  const plateGiven = today !== null && nominal !== null
+  const plateGiven = plateRatio !== 1 || (today !== null && nominal !== null && today.value === nominal.value)
   const row = series[0]?.points[0]?.rowPressurePa ?? null
   return {
     findings,
@@ -288,6 +297,11 @@ function portNeeds(series: readonly RawSeries[], raw: RawHeader): SheetNeed[] {
   if (raw.cylinder === null && (series.length === 0 || series.some(one => one.cylinder === null))) needs.push({ field: 'cylinder', question: 'Which cylinder is this sheet of?' })
   if (raw.side === null && (series.length === 0 || series.some(one => one.side === null))) needs.push({ field: 'side', question: 'Is this the intake or the exhaust?' })
   return needs
+}
+
+/** Null for a size or pressure that is nothing or less. */
+function positive(value: number | null): number | null {
+  return value !== null && value > 0 && Number.isFinite(value) ? value : null
 }
 
 function toWire({ heading_: _, ...column }: ReadColumn): SheetColumn {

@@ -41,6 +41,10 @@ export interface RawHeader {
 const textFields: readonly HeaderField[] = ['entry', 'pipe', 'operator', 'skip', 'bench']
 /** Fields whose value is one phrase: what follows a comma speaks of something else. */
 const endsWithPhrase: readonly HeaderField[] = ['head', 'cylinder', 'side', 'stage', 'date', 'pressure', 'barometer', 'temperature', 'humidity']
+/** What parts one phrase of a sentence from the next; a decimal comma does not. */
+const phraseEnd = /[,;](?!\d)|\s{2,}|\s[-/|]\s/
+/** Fields whose number may stand in front of their label. */
+const numbered: readonly HeaderField[] = ['valve', 'stem', 'throat', 'land', 'seat', 'humidity', 'temperature', 'barometer', 'pressure', 'leak']
 const lengthFields = ['valve', 'stem', 'throat', 'land'] as const
 
 /**
@@ -68,6 +72,19 @@ class HeaderReader {
       if (cell === '' || /^-+$/.test(cell)) continue
       const next = cells[i + 1] ?? ''
       const label = labelOnly(cell)
+      if (label === 'full-scale') {
+        // Its ranges may each have a cell: "Full scale | A = 28 cfm | B = 55 cfm".
+        const whole = cells.slice(i).filter(one => one !== '').join('; ')
+        this.assign('full-scale', whole, whole)
+        return
+      }
+      const range = /^(?:range|scale)\s+([A-Z]|\d{1,2})\b(?:\s*full[\s-]*scale)?/i.exec(cell)
+      if (range && next !== '') {
+        const whole = `${range[1] ?? ''} = ${next} ${cell.slice(range[0].length)}`
+        this.assign('full-scale', whole, whole)
+        i++
+        continue
+      }
       if (label !== null && next !== '' && (labelOnly(next) === null || textFields.includes(label) || ['stage', 'side', 'basis'].includes(label))) {
         this.readPair(label, cell.replace(/[:=\s]+$/, ''), next)
         i++
@@ -104,12 +121,14 @@ class HeaderReader {
   }
 
   private readLoose(cell: string): void {
-    const bench = /^(?:the\s+)?([A-Za-z][\w-]*)\s+(?:flow\s*)?bench\b/i.exec(cell)
-    if (bench && this.raw.bench === null && !/^(?:flow|test|air|this|our|same)$/i.test(bench[1] ?? '')) {
+    const bench = /(?:^|\b(?:on|at)\s+)(?:the\s+)?([A-Za-z][\w-]*)\s+(?:flow\s*)?bench\b/i.exec(cell)
+    if (bench && this.raw.bench === null && !/^(?:flow|test|air|this|our|same|the)$/i.test(bench[1] ?? '')) {
       this.raw.bench = titleCase(bench[1] ?? '')
-      this.readLoose(cell.slice(bench[0].length))
+      this.readLoose(`${cell.slice(0, bench.index)}, ${cell.slice(bench.index + bench[0].length)}`.replace(/^,\s*/, ''))
       return
     }
+    const by = /\bby\s+((?:\p{Lu}\.\s?)+\p{Lu}[\p{L}'-]+)/u.exec(cell)
+    if (by) this.raw.operator ??= by[1] ?? null
     const labels = findLabels(cell)
     const first = labels[0]
     this.readUnlabelled(cell.slice(0, first?.start ?? cell.length))
@@ -121,11 +140,14 @@ class HeaderReader {
     labels.forEach((found, at) => {
       const end = labels[at + 1]?.start ?? cell.length
       let value = numbersFirst ? cell.slice(labels[at - 1]?.end ?? 0, found.start) : cell.slice(found.end, end)
+      // "45 deg seat", "55 % humidity": the number may stand in front of its label.
+      const before = cell.slice(labels[at - 1]?.end ?? 0, found.start).split(phraseEnd).pop() ?? ''
+      if (!/\d/.test(value) && /\d/.test(before) && numbered.includes(found.field)) value = before
       // A text value in a sentence ends with its phrase.
       let rest = ''
       if (textFields.includes(found.field) || endsWithPhrase.includes(found.field)) {
-        const stop = /[,;](?!\d)|\s{2,}/.exec(value.replace(/^[\s:=]+/, match => '_'.repeat(match.length)))
-        if (stop) [value, rest] = [value.slice(0, stop.index), value.slice(stop.index + 1)]
+        const stop = phraseEnd.exec(value.replace(/^[\s:=]+/, match => '_'.repeat(match.length)))
+        if (stop) [value, rest] = [value.slice(0, stop.index), value.slice(stop.index + stop[0].length)]
       }
       this.assign(found.field, cell.slice(found.start, found.end) + value, value.replace(/^[\s:=,-]+/, '').trim())
       if (rest !== '') this.readUnlabelled(rest)
@@ -159,7 +181,7 @@ class HeaderReader {
       const slash = /^\s*[/]\s*(?:cyl\.?\s*)?(\d{1,2})\b/i.exec(rest.slice(head.index + head[0].length))
       if (slash && raw.cylinder === null) raw.cylinder = readCylinder(slash[1] ?? '')
     }
-    for (const part of rest.split(/\s{2,}|[;,](?!\d)/).map(piece => piece.trim()).filter(piece => piece !== '')) {
+    for (const part of rest.split(phraseEnd).map(piece => piece.trim()).filter(piece => piece !== '')) {
       const side = readSide(part, true)
       if (side && raw.side === null && part.split(' ').length <= 4) raw.side = side
       const stage = part.split(' ').length <= 5 ? readStage(part) : null
@@ -281,8 +303,8 @@ class HeaderReader {
         const at = /(?:\bat\b|@)\s*([^:;]*)/i.exec(whole)
         const single = Object.keys(table).length === 0 ? readHeaderNumber(whole.replace(/(?:\bat\b|@).*$/i, ''), 'flow', decimal) : null
         if (single?.unit) table[''] = single.value
-        if (Object.keys(table).length > 0 && raw.fullScale === null) {
-          raw.fullScale = { table, unit: findUnitWord(whole, 'flow')?.unit ?? null, pressurePa: at ? inUnit(readHeaderNumber(at[1] ?? '', 'pressure', decimal), 'Pa') : null }
+        if (Object.keys(table).length > 0) {
+          raw.fullScale = { table: { ...table, ...raw.fullScale?.table }, unit: raw.fullScale?.unit ?? findUnitWord(whole, 'flow')?.unit ?? null, pressurePa: at ? inUnit(readHeaderNumber(at[1] ?? '', 'pressure', decimal), 'Pa') : null }
         }
         return
       }

@@ -27,7 +27,7 @@ export function readPlateLog(table: FoundTable, columns: readonly ReadColumn[], 
   const entries = table.rows.flatMap(({ cells }) => {
     const when = readDate(cells[date?.index ?? -1] ?? '')
     const value = readCell(cells[plate?.index ?? -1] ?? '', decimal)
-    if (value.kind !== 'number') return []
+    if (value.kind !== 'number' || !(value.value > 0)) return []
     if (when?.kind !== 'date') {
       if (when) findings.push({ code: 'ambiguous-date', severity: 'ask', lifts: [], text: `"${when.found}" can be ${when.either[0]} or ${when.either[1]}; that row was left out. Write the year first.` })
       return []

@@ -47,6 +47,8 @@ export interface SeriesContext {
   fullScaleCfm: Record<string, number> | null
   /** The header says flow was brought to 28. */
   at28: boolean | null
+  /** More lifts than this are no flow curve; the rest is left unread and said so. */
+  mostLifts: number
 }
 
 /**
@@ -68,11 +70,17 @@ export function readSeries(table: FoundTable, columns: readonly ReadColumn[], gr
   if (needs.length > 0) return { series: [], findings, needs }
 
   const passes = new Map<string, { run: string | null, cylinder: number | null, side: Side | null, rows: { liftMm: number, cells: string[], group: ColumnGroup }[] }>()
-  for (const { cells, runLabel, cylinder } of table.rows) {
+  const most = context.mostLifts * Math.max(1, new Set(table.rows.map(row => `${row.runLabel}|${row.cylinder}`)).size)
+  if (table.rows.length > most) findings.push({ code: 'unreadable-cell', severity: 'refuse', lifts: [], text: `The table has ${table.rows.length} rows; only the first ${most} were read. A flow sheet has a row for each lift.` })
+  for (const { cells, runLabel, cylinder } of table.rows.slice(0, most)) {
     const liftCell = readCell(cells[lift.index] ?? '', context.decimal)
     if (liftCell.kind === 'ambiguous') findings.push({ code: 'ambiguous-number', severity: 'ask', lifts: [], text: `${lift.heading}: ${liftCell.message}` })
     if (liftCell.kind !== 'number') continue
     const liftMm = lift.unit === 'lift/diameter' ? liftCell.value * (context.valveMm ?? 0) : convert(liftCell.value, lift.unit as string, 'mm')
+    if (liftMm < -0.005) {
+      findings.push({ code: 'lift-out-of-bounds', severity: 'ask', lifts: [round(liftMm)], text: `A lift of ${lifts(liftMm)} is below the seat. Zero the dial and read that row again.` })
+      continue
+    }
     for (const group of groups) {
       const run = group.run ?? runLabel ?? textOf(cells, by('run'))
       const own = {
