@@ -89,6 +89,9 @@ export interface ReviewSheetView {
   others: { id: string, op: number, stageName: string, part: string, version: number, state: string, score: number | null, word: string | null }[]
 }
 
+/** What a review did. `complete` is false while the point waits for a second person's release. */
+export interface ReviewAnswer { review: string, decision: 'release' | 'send-back' | 'stop', point: string | null, complete: boolean, conditions: string[], submission: { id: string, state: string, version: number, score: number | null, word: string | null } }
+
 export interface CurveSetView { cylinder: number | null, side: Side, runs: { label: string, stage: string, op: number, date: string | null, points: { liftMm: number, cfm28: number, expandedUncertainty: number }[], missing: { liftMm: number, reason: string }[] }[], changes: { liftMm: number, cfm: number, expandedUncertainty: number, percent: number, verdict: 'gain' | 'loss' | 'no clear change' }[] | null }
 
 export interface PinView { number: number, photoId: string, x: number, y: number, criterion: string, text: string }

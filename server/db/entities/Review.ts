@@ -24,7 +24,7 @@ export const Review = defineEntity({
     /** Sentences as sent, by result: the proposal, or the instructor's edit. */
     sentences: p.json<{ criterion: string, title: string, cylinder: number | null, side: Side | null, at: string | null, state: CriterionState, text: string, edited: boolean }[]>(),
     /** Reasons typed for borderline or not assessed musts that were released. */
-    reasons: p.json<{ criterion: string, cylinder?: number | null, side?: string | null, reason: string }[]>(),
+    reasons: p.json<{ criterion: string, cylinder?: number | null, side?: Side | null, reason: string }[]>(),
     readAt: instant().nullable(),
   },
   indexes: [{ properties: ['submission'] }],
