@@ -5,6 +5,7 @@ import { Photo } from '#server/db/entities/Photo'
 import { Reading } from '#server/db/entities/Reading'
 import { Override } from '#server/db/entities/Review'
 import type { ScoreSet } from '#server/db/entities/ScoreSet'
+import type { FoundHead } from '#server/services/heads/find-head'
 import type { EvidenceSet } from '#shared/domain/rubric/evidence'
 import type { FoundSubmission } from './find-submission'
 
@@ -21,14 +22,20 @@ export const usualHandAllowanceMm = 0.15
  *
  * Run it in one snapshot with the submission's version, else the two may tell of different moments.
  */
-export async function gatherEvidence(em: EntityManager, submission: FoundSubmission): Promise<{ evidence: EvidenceSet, restsOn: ScoreSet['restsOn'] }> {
-  const head = submission.head.$
+export function gatherEvidence(em: EntityManager, submission: FoundSubmission): Promise<Gathered> {
+  return gatherForPart(em, submission.head.$, submission, submission.id)
+}
+
+export interface Gathered { evidence: EvidenceSet, restsOn: ScoreSet['restsOn'] }
+
+/** The same for a part of a stage that nobody began yet (`submissionId` null). */
+export async function gatherForPart(em: EntityManager, head: FoundHead, due: Pick<EvidenceSet, 'op' | 'part' | 'ports'>, submissionId: string | null): Promise<Gathered> {
   const ofHead = { submission: { head: head.id } }
   const readings = await em.find(Reading, { ...ofHead, voidedAt: null }, { populate: ['submission', 'instrument'], orderBy: { takenAt: 'asc', id: 'asc' } })
   const photos = await em.find(Photo, { ...ofHead, setAsideAt: null, state: { $ne: 'cannot-use' } }, { populate: ['submission'], orderBy: { takenAt: 'asc', id: 'asc' } })
   const documents = await em.find(EvidenceDocument, { ...ofHead, setAsideAt: null }, { populate: ['submission'], orderBy: { addedAt: 'asc', id: 'asc' } })
   const sheets = await newestReadings(em, head.id)
-  const overrides = await em.find(Override, { result: { set: { submission: submission.id } } }, { populate: ['result'], orderBy: { at: 'desc' } })
+  const overrides = submissionId === null ? [] : await em.find(Override, { result: { set: { submission: submissionId } } }, { populate: ['result'], orderBy: { at: 'desc' } })
   const judged = new Map<string, EvidenceSet['judged'][number]>()
   for (const one of overrides) {
     const { criterion, cylinder, side } = one.result.$
@@ -39,9 +46,9 @@ export async function gatherEvidence(em: EntityManager, submission: FoundSubmiss
   return {
     evidence: {
       casting: casting.card,
-      op: submission.op,
-      part: submission.part,
-      ports: submission.ports,
+      op: due.op,
+      part: due.part,
+      ports: due.ports,
       readings: readings.map(one => ({
         id: one.id, quantity: one.quantity, op: one.submission.$.op, cylinder: one.cylinder ?? null, side: one.side ?? null, spot: one.at?.spot ?? null, when: one.when ?? null,
         values: one.values, unit: one.baseUnit, instrument: one.instrument.$.code, expandedU: one.expandedU, takenAt: one.takenAt.getTime(),
