@@ -42,6 +42,13 @@ it('refuses a bomb whose directory lies about its size', async () => {
   }
   expect(changed).toBe(1)
   await expect(readSpreadsheet(bomb)).rejects.toMatchObject({ code: 'sheet_too_large' })
+  // Spoiled near its end: told too large, it was stopped before it got there, and the memory was never taken.
+  const name = new TextEncoder().encode('xl/media/image1.xml')
+  const local = Buffer.from(bomb.buffer, bomb.byteOffset, bomb.byteLength).indexOf(name)
+  const packed = zipSync({ x: new Uint8Array(60 * 1024 ** 2) }).length
+  bomb.fill(0xff, local + packed - 600, local + packed - 300)
+  expect(() => unpackZip(bomb, { bytes: 1024 ** 2, entries: 200 })).toThrow(expect.objectContaining({ code: 'sheet_too_large' }))
+  expect(() => unpackZip(bomb, { bytes: 100 * 1024 ** 2, entries: 200 })).toThrow(expect.objectContaining({ code: 'sheet_unreadable' }))
 })
 it('refuses more than 200 files inside', async () => {
   const many = Object.fromEntries(Array.from({ length: 200 }, (_, n) => [`x/${n}.xml`, strToU8('<a/>')]))
