@@ -47,7 +47,18 @@ export const judgeSubmission: Judge = (stage, evidence) => {
 export function judgeCriterion(criterion: Criterion, evidence: EvidenceSet): CriterionResult[] {
   const because = doesNotApplyBecause(criterion, evidence)
   if (because !== null) return [empty(criterion, { cylinder: null, side: null }, 'does-not-apply', `Does not apply: ${because}.`)]
-  return unitsOf(criterion, evidence).flatMap(unit => judgeUnit(criterion, evidence, unit))
+  const narrowed = { ...evidence, readings: readingsFor(criterion, evidence) }
+  return unitsOf(criterion, narrowed).flatMap(unit => judgeUnit(criterion, narrowed, unit))
+}
+
+/** Quantities an evaluator may ask for beside those its criterion names. */
+const askedForBeside = new Set(['valve-head-diameter', 'valve-stem-diameter', 'throat-diameter', 'seat-land', 'section-area', 'rig-pressure', 'plate-flow'])
+
+/** A whole head has thousands of readings; a criterion looks through the few it can use. */
+function readingsFor(criterion: Criterion, evidence: EvidenceSet): EvidenceSet['readings'] {
+  const named = new Set([criterion.quantity, ...criterion.wants.map(want => want.quantity)])
+  // Of what is only asked for beside, this stage's and the receiving stage's count, and shape-change names its own.
+  return evidence.readings.filter(reading => named.has(reading.quantity) || (askedForBeside.has(reading.quantity) && (reading.op === evidence.op || reading.op === 10)))
 }
 
 function judgeUnit(criterion: Criterion, evidence: EvidenceSet, unit: JudgedUnit): CriterionResult[] {

@@ -13,8 +13,9 @@ import { wantInWords } from './want-in-words'
  * Source: handbook 3.1, *not assessed* is evidence missing or not usable.
  */
 export function missingProof(criterion: Criterion, evidence: EvidenceSet, unit: JudgedUnit): string[] {
-  const missing = wantItems(criterion, evidence).filter(item => item.have < item.count
-    && (item.cylinder === null || unit.cylinder === null || item.cylinder === unit.cylinder)
+  // Only the unit's own ports are asked about: a head has hundreds of readings, and each unit would count them all again.
+  const ports = evidence.ports.filter(port => (unit.cylinder === null || port.cylinder === unit.cylinder) && (unit.side === null || port.side === unit.side))
+  const missing = wantItems(criterion, { ...evidence, ports }).filter(item => item.have < item.count
     && (item.side === null || unit.side === null || item.side === unit.side))
   // Spots of one want are told in one breath.
   const groups = new Map<string, WantItem[]>()
