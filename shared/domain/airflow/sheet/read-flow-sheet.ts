@@ -111,7 +111,7 @@ function readRuns(found: FoundTable, columns: ReadColumn[], raw: RawHeader, deci
     notes.push({ code: 'range-at-other-pressure', severity: 'ask', lifts: [], text: `The full-scale table is for ${(raw.fullScale.pressurePa / 249.08891).toFixed(1)} inH2O, the run is at ${(headerPressure / 249.08891).toFixed(1)}. Which holds?` })
   }
   const allNeeds = [...needs, ...closed.needs, ...portNeeds(series, raw)]
-  if (reduced.some(one => one.run.points.length < 3)) notes.push({ code: 'unreadable-cell', severity: 'refuse', lifts: [], text: 'Fewer than three lifts could be read: that is no curve.' })
+  if (reduced.some(one => one.run.points.length < 3)) notes.push({ code: 'not-a-curve', severity: 'refuse', lifts: [], text: 'Fewer than three lifts could be read: that is no curve.' })
   const faults = findSheetFaults(reduced, { header, zeroRowCfm28, casting: help.casting ?? null, baseline: help.baseline ?? null })
   return {
     kind: 'flow',

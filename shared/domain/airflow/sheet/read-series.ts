@@ -71,7 +71,7 @@ export function readSeries(table: FoundTable, columns: readonly ReadColumn[], gr
 
   const passes = new Map<string, { run: string | null, cylinder: number | null, side: Side | null, rows: { liftMm: number, cells: string[], group: ColumnGroup }[] }>()
   const most = context.mostLifts * Math.max(1, new Set(table.rows.map(row => `${row.runLabel}|${row.cylinder}`)).size)
-  if (table.rows.length > most) findings.push({ code: 'unreadable-cell', severity: 'refuse', lifts: [], text: `The table has ${table.rows.length} rows; only the first ${most} were read. A flow sheet has a row for each lift.` })
+  if (table.rows.length > most) findings.push({ code: 'not-a-curve', severity: 'refuse', lifts: [], text: `The table has ${table.rows.length} rows; only the first ${most} were read. A flow sheet has a row for each lift.` })
   for (const { cells, runLabel, cylinder } of table.rows.slice(0, most)) {
     const liftCell = readCell(cells[lift.index] ?? '', context.decimal)
     if (liftCell.kind === 'ambiguous') findings.push({ code: 'ambiguous-number', severity: 'ask', lifts: [], text: `${lift.heading}: ${liftCell.message}` })

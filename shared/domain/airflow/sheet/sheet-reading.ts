@@ -58,7 +58,7 @@ export interface SheetFinding {
 
 export type SheetFindingCode =
   | 'missing-point' | 'note-in-cell' | 'lift-read-twice' | 'several-runs' | 'own-mean-ignored' | 'own-flow-differs' | 'nominal-size' | 'air-not-given' | 'no-plate'
-  | 'ambiguous-date' | 'ambiguous-number' | 'unreadable-cell' | 'lift-out-of-bounds' | 'plate-out' | 'range-at-other-pressure' | 'zero-row-against-leak'
+  | 'ambiguous-date' | 'ambiguous-number' | 'not-a-curve' | 'lift-out-of-bounds' | 'plate-out' | 'range-at-other-pressure'
   | 'leak-large' | 'leak-in-curve' | 'coefficient-over-one' | 'coefficient-high' | 'low-lift-coefficient-small' | 'pressure-sag' | 'bench-limit' | 'lift-zero-off'
   | 'not-rising' | 'point-off-curve' | 'wrong-pressure' | 'setup-differs' | 'cylinder-spread' | 'bench-drift' | 'plate-off-line'
 
