@@ -26,6 +26,7 @@ const steps: Step[] = [
   { name: 'lint', script: 'node_modules/eslint/bin/eslint.js', args: ['.'] },
   { name: 'typecheck', script: 'node_modules/vue-tsc/bin/vue-tsc.js', args: ['-b', '--noEmit'] },
   { name: 'typecheck of tests', script: 'node_modules/typescript/bin/tsc', args: ['-p', 'tests/tsconfig.json'] },
+  { name: 'typecheck of app tests', script: 'node_modules/vue-tsc/bin/vue-tsc.js', args: ['-p', 'tests/app/tsconfig.json'] },
   vitest('domain'), vitest('meta'), vitest('server'), vitest('app'),
 ]
 const endToEnd: Step = {
@@ -58,9 +59,9 @@ await runCommand(async () => {
   console.log('')
   for (const result of results) {
     const tests = result.passed + result.failed + result.skipped > 0 ? `   ${result.passed} passed, ${result.failed} failed${result.skipped > 0 ? `, ${result.skipped} skipped` : ''}` : ''
-    console.log(`${result.ok ? 'well    ' : 'NOT WELL'}  ${result.name.padEnd(20)} ${result.seconds.toFixed(1).padStart(6)} s${tests}`)
+    console.log(`${result.ok ? 'well    ' : 'NOT WELL'}  ${result.name.padEnd(22)} ${result.seconds.toFixed(1).padStart(6)} s${tests}`)
   }
-  console.log(`          everything           ${((performance.now() - began) / 1000).toFixed(1).padStart(6)} s`)
+  console.log(`          everything             ${((performance.now() - began) / 1000).toFixed(1).padStart(6)} s`)
   const sum = (of: 'passed' | 'failed') => results.reduce((total, result) => total + result[of], 0)
   if (results.some(result => !result.ok)) process.exitCode = 1
   console.log(`${sum('passed')} passed, ${sum('failed')} failed`)
