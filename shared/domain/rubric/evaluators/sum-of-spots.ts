@@ -1,23 +1,5 @@
 import type { Evaluator } from '../evidence'
-import { extreme, notRead, spotValues } from '../spot-values'
-
-/** Every reading is judged and the worst decides. */
-export const atEachSpot: Evaluator = (evidence, criterion, unit) => {
-  const values = spotValues(evidence, criterion, unit)
-  return values.length === 0 ? notRead(criterion.quantity, unit) : { values }
-}
-
-/** The least reading is the value: thickness, gap, radius. */
-export const leastOfSpots: Evaluator = (evidence, criterion, unit) => {
-  const least = extreme(spotValues(evidence, criterion, unit), 'least')
-  return least === null ? notRead(criterion.quantity, unit) : { values: [least] }
-}
-
-/** The greatest reading is the value: a bow, a drop, a step. */
-export const greatestOfSpots: Evaluator = (evidence, criterion, unit) => {
-  const greatest = extreme(spotValues(evidence, criterion, unit), 'greatest')
-  return greatest === null ? notRead(criterion.quantity, unit) : { values: [greatest] }
-}
+import { notRead, spotValues } from '../spot-values'
 
 /** Counts and areas add up over the spots; {where} names the spots that have any. */
 export const sumOfSpots: Evaluator = (evidence, criterion, unit) => {
