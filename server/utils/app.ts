@@ -8,6 +8,7 @@ import type { Config } from './config'
 import { readConfig } from './config'
 import type { Signals } from './signals'
 import { startApp } from './start-app'
+import type { StreamCount } from './stream-count'
 
 /** Everything a use case may need from outside itself. One a process; nothing in it remembers a request. */
 export interface App {
@@ -19,6 +20,7 @@ export interface App {
   clock: Clock
   imaging: Imaging
   signals: Signals
+  streams: StreamCount
   close: () => Promise<void>
 }
 
@@ -27,4 +29,9 @@ let started: Promise<App> | undefined
 /** The process's one app, started at the first call. Nitro does not await plugins, so every request awaits this. */
 export function getApp(): Promise<App> {
   return started ??= startApp(readConfig(process.env))
+}
+
+/** Serves this app instead of one made from the environment: for whoever has started one already, as tests have. */
+export function provideApp(app: App): void {
+  started = Promise.resolve(app)
 }

@@ -11,6 +11,7 @@ import type { Config } from './config'
 import { withDatabaseLock } from './database-lock'
 import { startBoss } from './boss'
 import { listen } from './signals'
+import { createStreamCount } from './stream-count'
 
 /** Connects everything. @throws when the database cannot be had: the process should end and be started again. */
 export async function startApp(config: Config): Promise<App> {
@@ -29,6 +30,7 @@ export async function startApp(config: Config): Promise<App> {
     clock: createClock(demo ? demo.value as { demoNow: string, seededAt: string } : null),
     imaging: sharpImaging(),
     signals,
+    streams: createStreamCount(4),
     async close() {
       // Order matters: a running job still needs the ORM.
       await boss.stop({ graceful: true, wait: true, timeout: 25_000 })
