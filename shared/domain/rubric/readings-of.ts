@@ -31,10 +31,15 @@ export function readingsOf(evidence: EvidenceSet, wanted: ReadingsWanted): Readi
 export function allReadingsOf(evidence: EvidenceSet, { quantity, op, unit, spot, when }: ReadingsWanted): ReadingEvidence[] {
   return evidence.readings
     .filter(reading => reading.quantity === quantity && reading.op === (op ?? evidence.op) && reading.values.length > 0)
-    .filter(reading => unit === undefined || isOf(reading, unit))
+    .filter(reading => unit === undefined || isReadOf(reading, unit))
     .filter(reading => spot === undefined || sameSpot(reading.spot, spot))
     .filter(reading => when === undefined || whenOf(reading, evidence.part) === when)
     .sort((a, b) => b.takenAt - a.takenAt || (a.id < b.id ? 1 : -1))
+}
+
+/** A reading that names no cylinder or side is of none: it must not stand for every port of the head. */
+function isReadOf(reading: ReadingEvidence, unit: JudgedUnit): boolean {
+  return (unit.cylinder === null || reading.cylinder === unit.cylinder) && (unit.side === null || reading.side === unit.side)
 }
 
 /** Whether evidence with this cylinder and side belongs to the unit: where the unit or the evidence says nothing, it does. */

@@ -74,7 +74,8 @@ function countOf(item: Omit<WantItem, 'have'>, places: number, criterion: Criter
   switch (item.kind) {
     case 'photo':
       return evidence.photos.filter(photo => photo.view === item.view && photo.op === evidence.op && isOf(photo, unit)
-        && (item.cylinder === null || photo.cylinder !== null)
+        // A picture that names no cylinder, or no side where a port is wanted, must not stand for every one of them.
+        && (item.cylinder === null || (photo.cylinder !== null && (item.side === null || photo.side !== null)))
         // With one spot wanted, a photo that names none is of it.
         && (item.spot === null || sameSpot(photo.spot, item.spot) || (photo.spot === null && places === 1))).length
     case 'reading': {

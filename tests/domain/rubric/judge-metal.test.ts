@@ -91,6 +91,12 @@ describe('missing evidence', () => {
     // A throat hardly opened can wait for its photo.
     expect(only({ ...bowl(all => all.map(one => one.quantity === 'throat-diameter' ? { ...one, values: [34] } : one)), photos: [] }, 'W-03i').state).toBe('not-assessed')
   })
+  it('is not made up for by readings and photos that name no port', () => {
+    const evidence = bowl()
+    const nameless = { ...evidence, readings: evidence.readings.map(one => one.quantity === 'seat-land' ? { ...one, cylinder: null, side: null } : one) }
+    expect(only(nameless, 'W-01').state).toBe('not-assessed')
+    expect(only({ ...evidence, photos: evidence.photos.map(one => ({ ...one, side: null })) }, 'W-01').text).toBe('Still wanted: photo Seat close-up.')
+  })
   it('never makes one criterion\'s contradiction stop the others', () => {
     const evidence = bowl(at('throat-diameter', '2-8', -3))
     expect(judgeSubmission(stageOf('W'), evidence).results.find(one => one.criterion === 'W-06')?.state).toBe('accept')
