@@ -56,13 +56,7 @@ async function whatIsWrong(app: App, upload: Upload, stored: StoredObject): Prom
   const sha256 = stored.sha256 ?? (upload.bytes <= hashedHere ? await app.storage.sha256Of(upload.key) : null)
   if (sha256 !== null && sha256 !== upload.sha256) return new Refusal('upload_differs')
   const first = await app.storage.readRange(upload.key, 0, 4095)
-  const detected = await app.imaging.detectType(first)
-  const type = detected === 'application/octet-stream' && looksLikeText(first) ? 'text/plain' : detected
+  const type = await app.imaging.detectType(first)
   if (typesOf[upload.purpose].includes(type)) return type
   return new Refusal('upload_wrong_type', `"${upload.filename}" is ${type === 'application/octet-stream' ? 'of no kind we know' : type}, and a ${upload.purpose} cannot be that.`)
-}
-
-/** No NUL and few control characters: what a delimited sheet or a note is made of, in whichever 8-bit set or UTF-8. */
-function looksLikeText(bytes: Uint8Array): boolean {
-  return bytes.length > 0 && bytes.every(byte => byte >= 32 || byte === 9 || byte === 10 || byte === 13 || byte === 12)
 }
