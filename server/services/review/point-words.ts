@@ -1,4 +1,6 @@
+import { partsOfStage } from '#shared/domain/rubric/covers'
 import type { Rubric, RubricPoint, RubricStage } from '#shared/domain/rubric/criterion'
+import type { SubmissionPart } from '#shared/domain/rubric/evidence'
 
 /** The point with that code and the stage it falls on. */
 export function findPoint(rubric: Rubric, code: string): { stage: RubricStage, point: RubricPoint } | null {
@@ -9,15 +11,12 @@ export function findPoint(rubric: Rubric, code: string): { stage: RubricStage, p
   return null
 }
 
-/** The next stroke once a point is released, and the op whose lesson to read; null when nothing comes after. */
-export function nextStroke(rubric: Rubric, code: string): { op: number, text: string } | null {
+/** The part of the route that is due once a point is released; null when nothing comes after. */
+export function nextPart(rubric: Rubric, code: string): { op: number, name: string, part: SubmissionPart } | null {
   const found = findPoint(rubric, code)
   if (!found) return null
   const { stage, point } = found
-  const named = (one: RubricStage): string => `op ${one.op}, ${one.name}`
-  if (point.when === 'before') return { op: stage.op, text: named(stage) }
-  if (point.when === 'first') return { op: stage.op, text: `the rest of ${named(stage)}` }
-  if (point.when === 'last-cut') return { op: stage.op, text: `the last cut of ${named(stage)}` }
+  if (point.when !== 'after') return { op: stage.op, name: stage.name, part: 'rest' }
   const next = rubric.stages.find(one => one.op > stage.op)
-  return next ? { op: next.op, text: named(next) } : null
+  return next ? { op: next.op, name: next.name, part: partsOfStage(next)[0] ?? 'rest' } : null
 }

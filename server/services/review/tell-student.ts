@@ -6,13 +6,14 @@ import { evidenceSentBack } from '#server/services/mail/templates/evidence-sent-
 import { holdReleased } from '#server/services/mail/templates/hold-released'
 import { stopped } from '#server/services/mail/templates/stopped'
 import { writeMail } from '#server/services/mail/write-mail'
+import { strokeWords } from '#server/services/school/stage-words'
 import type { FoundSubmission } from '#server/services/submissions/find-submission'
 import type { Actor } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
 import { longDate, timeOfDay } from '#shared/contract/school-time'
 import type { PointCase } from './point-case'
 import { pointName } from '#shared/domain/rubric/route-state'
-import { nextStroke } from './point-words'
+import { nextPart } from './point-words'
 import { resultSpot } from './result-spot'
 import { standingState } from './standing-state'
 import type { CalledStop } from './stop-at-review'
@@ -25,7 +26,7 @@ const feedbackUrl = (app: App, submission: FoundSubmission): string => `${app.co
 export async function tellReleased(tx: EntityManager, app: App, actor: Actor, review: Review, submission: FoundSubmission, { rubric }: PointCase, added: readonly string[]): Promise<void> {
   const head = submission.head.$
   const point = submission.point ?? ''
-  const next = nextStroke(rubric, point)
+  const next = nextPart(rubric, point)
   // A few dozen lessons; which ops one is for is an array column.
   const lesson = next === null ? undefined : (await tx.find(Lesson, {}, { orderBy: { number: 'asc' } })).find(one => one.ops.includes(next.op))
   await writeMail(tx, app, {
@@ -38,7 +39,7 @@ export async function tellReleased(tx: EntityManager, app: App, actor: Actor, re
       instructor: actor.name,
       at: schoolTime(review.at),
       conditions: [...new Set([...added, ...(review.condition ? [review.condition] : [])])],
-      next: next?.text ?? null,
+      next: next === null ? null : strokeWords(next.op, next.part) || `${next.name}.`,
       lesson: lesson ? { number: lesson.number, title: lesson.title } : null,
       feedback: review.feedback,
       url: feedbackUrl(app, submission),

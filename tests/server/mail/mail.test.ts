@@ -118,8 +118,8 @@ it('counts what is to be redone in the subject of evidence sent back', async () 
 })
 
 it('names every condition and the lesson in a release', async () => {
-  const { subject, text } = await renderLetter(holdReleased({ head: 'DNK-0147', point: 'Hold 4', instructor: 'Hanne Brockwell', at: '19:40 on Thursday 26 March', conditions: ['no more cutting at 8 o\'clock'], next: 'the rest of Bowl', lesson: { number: 7, title: 'The bowl' }, feedback: '', url: 'http://127.0.0.1:3000/' }))
+  const { subject, text } = await renderLetter(holdReleased({ head: 'DNK-0147', point: 'Hold 4', instructor: 'Hanne Brockwell', at: '19:40 on Thursday 26 March', conditions: ['no more cutting at 8 o\'clock'], next: 'The other bowls, as the first.', lesson: { number: 7, title: 'The bowl' }, feedback: '', url: 'http://127.0.0.1:3000/' }))
   expect(subject).toBe('Hold 4: released - you may go on')
   expect(text).toContain('with a condition:\n  - no more cutting at 8 o\'clock')
-  expect(text).toContain('Read lesson 7, The bowl, first.')
+  expect(text).toContain('Next stroke: The other bowls, as the first. Read lesson 7, The bowl, first.')
 })

@@ -9,7 +9,7 @@ export interface HoldReleased {
   at: string
   /** The instructor's own, and those the program added. */
   conditions: string[]
-  /** Next stroke, or null after the last stage. */
+  /** Next stroke as whole sentences, or null after the last stage. */
   next: string | null
   lesson: { number: number, title: string } | null
   feedback: string
@@ -24,7 +24,7 @@ export function holdReleased(given: HoldReleased): Letter {
     paragraphs: [
       { text: `${given.instructor} released ${given.point} of ${given.head} at ${given.at}${withCondition}${withCondition === '' ? '.' : ':'}`, items: given.conditions },
       ...(given.feedback === '' ? [] : [{ text: given.feedback }]),
-      ...(given.next === null ? [] : [{ text: `Next stroke: ${given.next}.${given.lesson === null ? '' : ` Read lesson ${given.lesson.number}, ${given.lesson.title}, first.`}`, strong: true }]),
+      ...(given.next === null ? [] : [{ text: `Next stroke: ${given.next}${given.lesson === null ? '' : ` Read lesson ${given.lesson.number}, ${given.lesson.title}, first.`}`, strong: true }]),
     ],
     action: { label: 'Read the feedback', url: given.url },
     from: given.instructor,
