@@ -47,8 +47,7 @@ export async function addPhoto(em: EntityManager, app: App, actor: Actor, submis
     await tx.flush()
     await enqueue(app, tx, 'prepare-photo', { photoId: id })
     await afterEvidence(tx, app, submission)
-    await tx.populate(photo, ['addedBy'])
-    return viewPhoto(app, photo)
+    return viewPhoto(app, await tx.findOneOrFail(Photo, { id }, { populate: ['addedBy'] }))
   })
 }
 

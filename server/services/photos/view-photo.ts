@@ -4,7 +4,7 @@ import type { App } from '#server/utils/app'
 import type { PhotoView } from '#shared/contract/views'
 import { viewNames } from '#shared/domain/rubric/words'
 
-const states: Record<Photo['state'], PhotoView['state']> = { 'taken': 'taken', 'being-measured': 'being measured', 'cannot-use': 'cannot use', 'measured': 'measured', 'reviewed': 'reviewed' }
+const states = new Map<string, PhotoView['state']>([['being-measured', 'being measured'], ['cannot-use', 'cannot use']])
 
 /** A photo as pages show it: signed addresses of the pictures we made ourselves, never of the original. */
 export async function viewPhoto(app: Pick<App, 'storage'>, photo: Loaded<Photo, 'addedBy'>): Promise<PhotoView> {
@@ -16,7 +16,7 @@ export async function viewPhoto(app: Pick<App, 'storage'>, photo: Loaded<Photo, 
     cylinder: photo.cylinder ?? null,
     side: photo.side ?? null,
     spot: photo.spot ?? null,
-    state: states[photo.state],
+    state: states.get(photo.state) ?? photo.state as PhotoView['state'],
     problem: photo.problem ?? null,
     thumbUrl: await sign(photo.thumbKey),
     previewUrl: await sign(photo.previewKey),
