@@ -1,0 +1,96 @@
+import type { Actor } from '#server/utils/actor'
+import type { World } from './world'
+
+/*
+ * The rights of every route: route x role x own/other (DESIGN, "People and rights").
+ *
+ * ADDING A ROUTE? Add its row here, by the name it has in server/openapi.json; `rights.test.ts` fails until you do.
+ * `call` makes what the route is called upon, fresh for every call, and belonging to `owner`: to the caller where the column says
+ * "own" (student, alumni), else to Imre, whose cohort "instructor" teaches and "other instructor" does not. Give a body that is good:
+ * input is checked before ownership, so a bad one would hide a missing right.
+ * 'yes' is any answer but 401, 403, 404, 405 and 5xx: whether the work can be done is tested elsewhere.
+ */
+
+export type Outcome = 'yes' | 401 | 403 | 404
+export const columns = ['nobody', 'student', 'other student', 'alumni', 'instructor', 'other instructor', 'admin', 'safety'] as const
+export type Column = (typeof columns)[number]
+export interface MatrixRow {
+  /** "GET /api/heads/{id}" as server/openapi.json has it. */
+  route: string
+  who: Record<Column, Outcome>
+  /** `caller` is who calls, owner where nobody does: an upload belongs to whoever uses it. */
+  call: (world: World, owner: Actor, caller: Actor) => Promise<{ path: string, body?: unknown }>
+}
+
+const row = (route: string, who: MatrixRow['who'], call: MatrixRow['call']): MatrixRow => ({ route, who, call })
+const at = (path: string, body?: unknown) => async () => ({ path, body })
+
+const everybody: MatrixRow['who'] = { 'nobody': 'yes', 'student': 'yes', 'other student': 'yes', 'alumni': 'yes', 'instructor': 'yes', 'other instructor': 'yes', 'admin': 'yes', 'safety': 'yes' }
+const signedIn: MatrixRow['who'] = { ...everybody, nobody: 401 }
+const noRole: MatrixRow['who'] = { 'nobody': 401, 'student': 403, 'other student': 403, 'alumni': 403, 'instructor': 403, 'other instructor': 403, 'admin': 403, 'safety': 403 }
+/** Own head, or a head of a cohort taught; nobody else. */
+const workOnHead: MatrixRow['who'] = { ...noRole, 'student': 'yes', 'other student': 404, 'alumni': 'yes', 'instructor': 'yes', 'other instructor': 404 }
+const seeHead: MatrixRow['who'] = { ...workOnHead, admin: 'yes' }
+const students: MatrixRow['who'] = { ...noRole, 'student': 'yes', 'other student': 'yes', 'alumni': 'yes' }
+const instructors: MatrixRow['who'] = { ...noRole, 'instructor': 'yes', 'other instructor': 'yes' }
+const taught: MatrixRow['who'] = { ...noRole, 'instructor': 'yes', 'other instructor': 404 }
+
+export const matrix: readonly MatrixRow[] = [
+  // open to all
+  row('GET /api/health', everybody, at('/api/health')),
+  row('GET /api/openapi.json', everybody, at('/api/openapi.json')),
+  row('GET /api/auth/{path}', everybody, at('/api/auth/csrf')),
+  row('POST /api/auth/{path}', everybody, at('/api/auth/signout', {})),
+  row('POST /api/password/forgot', everybody, at('/api/password/forgot', { email: 'nobody@sallowbeck.example' })),
+  row('POST /api/password/set', everybody, at('/api/password/set', { token: 'x'.repeat(40), password: 'ten letters and more' })),
+
+  // oneself
+  row('GET /api/me', signedIn, at('/api/me')),
+  row('GET /api/me/sessions', signedIn, at('/api/me/sessions')),
+  row('DELETE /api/me/sessions/{id}', { 'nobody': 401, 'student': 404, 'other student': 404, 'alumni': 404, 'instructor': 404, 'other instructor': 404, 'admin': 404, 'safety': 404 }, at('/api/me/sessions/00000000-0000-4000-8000-000000000000')),
+  row('POST /api/me/sign-out-everywhere', signedIn, at('/api/me/sign-out-everywhere', {})),
+
+  // heads
+  row('GET /api/heads', signedIn, at('/api/heads')),
+  row('GET /api/heads/{id}', { ...seeHead, safety: 'yes' }, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}` })),
+  row('GET /api/heads/{id}/spots', seeHead, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}/spots` })),
+  row('GET /api/heads/{id}/curves', seeHead, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}/curves` })),
+  row('GET /api/bench', students, at('/api/bench')),
+  row('POST /api/heads/{id}/stages/{op}/submissions', workOnHead, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}/stages/70/submissions`, body: {} })),
+  row('POST /api/heads/{id}/stop', { ...taught, safety: 'yes' }, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}/stop`, body: { where: 'bowl wall', reason: 'Look again.' } })),
+  // The safety officer lifts what the safety officer stopped; this one is an instructor's.
+  row('POST /api/stops/{id}/lift', { ...taught, safety: 404 }, async (world, owner) => ({ path: `/api/stops/${await world.stop(owner, world.school.hanne)}/lift`, body: { reason: 'Read again and held.' } })),
+  // Witness 1 is told to the chamber instructor; Hanne may not sign it.
+  row('POST /api/heads/{id}/points/{code}/seen', { ...taught, instructor: 403, safety: 403 }, async (world, owner) => ({ path: `/api/heads/${await world.told(owner)}/points/witness-1/seen`, body: {} })),
+
+  // submissions and evidence
+  row('POST /api/submissions/{id}/ask', workOnHead, async (world, owner) => ({ path: `/api/submissions/${await world.draft(owner)}/ask`, body: {} })),
+  row('GET /api/submissions/{id}/events', seeHead, async (world, owner) => ({ path: `/api/submissions/${await world.draft(owner)}/events` })),
+  row('POST /api/uploads', { ...noRole, ...students, ...{ 'instructor': 'yes', 'other instructor': 'yes' } }, at('/api/uploads', { purpose: 'photo', filename: 'a.jpg', bytes: 10, contentType: 'image/jpeg', sha256: 'a'.repeat(64) })),
+  row('GET /api/uploads/{id}', { ...noRole, 'student': 'yes', 'other student': 404, 'alumni': 'yes', 'instructor': 404, 'other instructor': 404 }, async (world, owner) => ({ path: `/api/uploads/${await world.upload(owner, 'photo')}` })),
+  row('POST /api/uploads/{id}/complete', { ...noRole, 'student': 'yes', 'other student': 404, 'alumni': 'yes', 'instructor': 404, 'other instructor': 404 }, async (world, owner) => ({ path: `/api/uploads/${await world.upload(owner, 'photo')}/complete`, body: {} })),
+  row('POST /api/submissions/{id}/photos', workOnHead, async (world, owner, caller) => ({ path: `/api/submissions/${await world.draft(owner)}/photos`, body: { uploadId: await world.upload(caller, 'photo'), view: 'view-12', cylinder: 1, side: 'intake' } })),
+  row('POST /api/submissions/{id}/documents', workOnHead, async (world, owner, caller) => ({ path: `/api/submissions/${await world.draft(owner)}/documents`, body: { uploadId: await world.upload(caller, 'document') } })),
+  // The safety officer sees view-13 only; this is a seat close-up.
+  row('GET /api/photos/{id}/image', { ...workOnHead, safety: 404 }, async (world, owner) => ({ path: `/api/photos/${await world.photo(owner)}/image` })),
+  row('POST /api/photos/{id}/set-aside', workOnHead, async (world, owner) => ({ path: `/api/photos/${await world.photo(owner)}/set-aside`, body: {} })),
+
+  // review and feedback
+  row('GET /api/review-queue', instructors, at('/api/review-queue')),
+  row('GET /api/shop-board', { ...instructors, safety: 'yes' }, at('/api/shop-board')),
+  row('POST /api/submissions/{id}/review', taught, async (world, owner) => ({ path: `/api/submissions/${await world.scored(owner)}/review`, body: { seen: 1, decision: 'send-back', point: 'hold-4', feedback: 'Take it again.' } })),
+  row('GET /api/feedback', students, at('/api/feedback')),
+  row('GET /api/submissions/{id}/feedback', workOnHead, async (world, owner) => ({ path: `/api/submissions/${await world.scored(owner)}/feedback` })),
+  row('POST /api/submissions/{id}/feedback/read', { ...students, 'other student': 404 }, async (world, owner) => ({ path: `/api/submissions/${await world.scored(owner)}/feedback/read`, body: {} })),
+
+  // people and work
+  row('GET /api/people', { ...noRole, admin: 'yes' }, at('/api/people')),
+  row('POST /api/people/invitations', { ...noRole, admin: 'yes' }, async () => ({ path: '/api/people/invitations', body: { name: 'Wen Sallis', email: `${crypto.randomUUID()}@sallowbeck.example`, roles: ['student'] } })),
+  row('GET /api/jobs/stuck', { ...noRole, admin: 'yes' }, at('/api/jobs/stuck')),
+  row('POST /api/jobs/{id}/rerun', { ...noRole, admin: 404 }, at('/api/jobs/00000000-0000-4000-8000-000000000000/rerun', {})),
+
+  // numbers by hand
+  row('GET /api/compute', signedIn, at('/api/compute')),
+  // With inputs left out it is refused for those, which is a yes to the person.
+  row('POST /api/compute/{quantity}', signedIn, at('/api/compute/air-density', {})),
+]

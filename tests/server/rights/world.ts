@@ -1,0 +1,117 @@
+import { createHash, randomUUID } from 'node:crypto'
+import { BenchPlace } from '#server/db/entities/BenchPlace'
+import { Cohort } from '#server/db/entities/Cohort'
+import { HeadStop, WitnessCall } from '#server/db/entities/PointRelease'
+import { PracticeHead } from '#server/db/entities/PracticeHead'
+import { Submission } from '#server/db/entities/Submission'
+import { Photo } from '#server/db/entities/Photo'
+import { Upload, type UploadPurpose } from '#server/db/entities/Upload'
+import { User } from '#server/db/entities/User'
+import type { Actor } from '#server/utils/actor'
+import type { SubmissionPart } from '#shared/domain/rubric/evidence'
+import type { Harness } from '../harness'
+import type { TestSchool } from '../review/school'
+import { clearFor, walkTo } from '../walk'
+
+/** What the rows of the matrix call upon. Whatever a row asks for is made fresh, so that no call is spoilt by one before it. */
+export interface World {
+  harness: Harness
+  school: TestSchool
+  bettany: Actor
+  freya: Actor
+  /** A head of this person walked up to op 70, Bowl. */
+  head: (owner: Actor) => Promise<string>
+  /** A draft of its first bowl. */
+  draft: (owner: Actor) => Promise<string>
+  /** The same scored, all accept. */
+  scored: (owner: Actor) => Promise<string>
+  /** A photo of a fresh draft; view-13 is the one the safety officer may see. */
+  photo: (owner: Actor, view?: string) => Promise<string>
+  /** A received upload of this person. */
+  upload: (owner: Actor, purpose: UploadPurpose) => Promise<string>
+  stop: (owner: Actor, by: Actor) => Promise<string>
+  /** Op 60 with Witness 1 told a moment ago. */
+  told: (owner: Actor) => Promise<string>
+}
+
+/** @param school with Imre as the student everything belongs to unless a row says otherwise */
+export async function makeWorld(harness: Harness, school: TestSchool): Promise<World> {
+  const bettany = await school.person('Bettany Crake', ['student'])
+  const freya = await school.person('Freya Dunmallet', ['student'])
+  await school.em().transactional(async (tx) => {
+    tx.persist(tx.create(BenchPlace, { cohort: tx.getReference(Cohort, school.cohortId), person: tx.getReference(User, freya.id), state: 'finished', slot: null, createdAt: school.now(), finishedAt: school.now() }))
+  })
+  for (const one of [school.imre, bettany, freya]) await clearFor(school, one)
+  let count = 200
+
+  async function head(owner: Actor, op = 70): Promise<string> {
+    count += 1
+    const id = await school.anotherHead(`DNK-0${count}`, owner)
+    await walkTo(school, op, id)
+    return id
+  }
+  async function draft(owner: Actor, op = 70, part: SubmissionPart = 'first', point = 'hold-4'): Promise<string> {
+    const headId = await head(owner, op)
+    return school.em().transactional(async (tx) => {
+      const made = tx.create(Submission, {
+        head: tx.getReference(PracticeHead, headId), op, part, point, tryNumber: 1, version: 1, ports: [{ cylinder: 1, side: 'intake' }], startedBy: tx.getReference(User, owner.id), createdAt: school.now(),
+        askedAt: null, scoredVersion: null, scoredAt: null, decidedAt: null, decision: null, score: null, word: null,
+      })
+      tx.persist(made)
+      return made.id
+    })
+  }
+  async function upload(owner: Actor, purpose: UploadPurpose, state: 'received' | 'used' = 'received'): Promise<string> {
+    const key = `uploads/${randomUUID()}`
+    const body = Buffer.from(`words of ${key}`)
+    const contentType = purpose === 'photo' ? 'image/jpeg' : 'text/plain'
+    await harness.app.storage.put({ key, body, contentType })
+    return school.em().transactional(async (tx) => {
+      const made = tx.create(Upload, {
+        owner: tx.getReference(User, owner.id), purpose, key, filename: 'a.txt', bytes: body.length, contentType, sha256: createHash('sha256').update(body).digest('hex'),
+        multipartId: null, detectedType: contentType, state, createdAt: school.now(), receivedAt: school.now(), usedAt: state === 'used' ? school.now() : null, usedBy: null,
+      })
+      tx.persist(made)
+      return made.id
+    })
+  }
+
+  return {
+    harness, school, bettany, freya, upload,
+    head: owner => head(owner),
+    draft: owner => draft(owner),
+    async scored(owner) {
+      const headId = await head(owner)
+      return (await school.scored({ op: 70, part: 'first', point: 'hold-4', head: headId })).id
+    },
+    async photo(owner, view = 'view-12') {
+      const submissionId = await draft(owner)
+      const uploadId = await upload(owner, 'photo', 'used')
+      return school.em().transactional(async (tx) => {
+        const key = `shown/${randomUUID()}`
+        await harness.app.storage.put({ key, body: Buffer.from('a picture'), contentType: 'image/webp' })
+        const made = tx.create(Photo, {
+          submission: tx.getReference(Submission, submissionId), upload: tx.getReference(Upload, uploadId), view, cylinder: 1, side: 'intake', spot: null, card: null, seatDepth: null, clockMark: null, state: 'taken', problem: null,
+          width: 40, height: 30, thumbKey: key, previewKey: key, addedBy: tx.getReference(User, owner.id), takenAt: school.now(), setAsideAt: null,
+        })
+        tx.persist(made)
+        return made.id
+      })
+    },
+    async stop(owner, by) {
+      const headId = await head(owner)
+      return school.em().transactional(async (tx) => {
+        const made = tx.create(HeadStop, { head: tx.getReference(PracticeHead, headId), by: tx.getReference(User, by.id), at: school.now(), criterion: null, where: 'bowl wall', reason: 'Look again.', liftedBy: null, liftedAt: null })
+        tx.persist(made)
+        return made.id
+      })
+    },
+    async told(owner) {
+      const headId = await head(owner, 60)
+      await school.em().transactional(async (tx) => {
+        tx.persist(tx.create(WitnessCall, { head: tx.getReference(PracticeHead, headId), point: 'witness-1', toldBy: tx.getReference(User, owner.id), toldAt: school.now(), waitUntil: new Date(school.now().getTime() + 1_800_000), seenBy: null, seenAt: null }))
+      })
+      return headId
+    },
+  }
+}
