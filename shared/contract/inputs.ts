@@ -7,6 +7,7 @@ export const stageParams = z.object({ id: z.string().uuid(), op: z.coerce.number
 const side = z.enum(['intake', 'exhaust'])
 const cylinder = z.number().int().min(1).max(16)
 const spotText = cleanText(80)
+const criterionCode = z.string().regex(/^[A-Z]{1,2}-\d{2}[a-z]?$/, 'is not a criterion')
 
 export const uploadInput = z.object({
   purpose: z.enum(['photo', 'flow-sheet', 'document', 'lesson-media']),
@@ -36,7 +37,7 @@ export type PhotoInput = z.infer<typeof photoInput>
 
 export const readingInput = z.object({
   quantity: someText(60).optional(),
-  criterion: z.string().regex(/^[A-Z]{1,2}-\d{2}[a-z]?$/, 'is not a criterion').optional(),
+  criterion: criterionCode.optional(),
   cylinder: cylinder.nullable().default(null),
   side: side.nullable().default(null),
   at: z.object({
@@ -69,17 +70,17 @@ export const askInput = z.object({ note: cleanText(2000).optional() }).strict()
 export const reviewInput = z.object({
   seen: z.number().int().min(1),
   overrides: z.array(z.object({
-    criterion: z.string().max(10),
+    criterion: criterionCode,
     cylinder: cylinder.nullable().optional(),
     side: side.nullable().optional(),
     at: cleanText(120).nullable().optional(),
     state: z.enum(['accept', 'borderline', 'reject']),
     reason: someText(1000),
   }).strict()).max(200).default([]),
-  reasons: z.array(z.object({ criterion: z.string().max(10), cylinder: cylinder.nullable().optional(), side: side.nullable().optional(), reason: someText(1000) }).strict()).max(200).default([]),
-  pins: z.array(z.object({ photoId: z.string().uuid(), x: z.number().finite().min(0).max(1), y: z.number().finite().min(0).max(1), criterion: z.string().max(10), text: cleanText(500).default('') }).strict()).max(50).default([]),
+  reasons: z.array(z.object({ criterion: criterionCode, cylinder: cylinder.nullable().optional(), side: side.nullable().optional(), reason: someText(1000) }).strict()).max(200).default([]),
+  pins: z.array(z.object({ photoId: z.string().uuid(), x: z.number().finite().min(0).max(1), y: z.number().finite().min(0).max(1), criterion: criterionCode, text: cleanText(500).default('') }).strict()).max(50).default([]),
   feedback: cleanText(5000).default(''),
-  sentences: z.array(z.object({ criterion: z.string().max(10), cylinder: cylinder.nullable().default(null), side: side.nullable().default(null), at: cleanText(120).nullable().default(null), text: cleanText(2000) }).strict()).max(300).optional(),
+  sentences: z.array(z.object({ criterion: criterionCode, cylinder: cylinder.nullable().default(null), side: side.nullable().default(null), at: cleanText(120).nullable().default(null), text: cleanText(2000) }).strict()).max(300).optional(),
   decision: z.enum(['release', 'send-back', 'stop']),
   point: z.string().regex(/^(hold|witness)-\d$/).nullable().default(null),
   condition: cleanText(1000).optional(),

@@ -4,6 +4,7 @@ import type { CastingCard } from '../domain/geometry/casting'
 import type { CriterionState, RubricStage } from '../domain/rubric/criterion'
 import type { CriterionResult, ReadingEvidence } from '../domain/rubric/evidence'
 import type { Side } from '../domain/units/port'
+import { cleanText } from './text'
 
 /** What the server answers and the pages draw. Times are ISO strings; lengths mm unless a name says otherwise. */
 
@@ -133,8 +134,8 @@ export interface Page<Item> { items: Item[], next: string | null }
 export const pageQuery = z.object({ after: z.string().max(400).refine(text => text.isWellFormed() && !text.includes('\0'), 'is not a page').optional(), limit: z.coerce.number().int().min(1).max(100).default(25) })
 
 export const queueQuery = pageQuery.extend({
-  cohort: z.string().max(20).optional(),
-  point: z.string().max(20).optional(),
+  cohort: cleanText(20).optional(),
+  point: cleanText(20).optional(),
   /** Only what the person may sign and has not signed. */
   mine: z.enum(['true', 'false']).default('false').transform(text => text === 'true'),
 })

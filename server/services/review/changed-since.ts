@@ -1,10 +1,10 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { EvidenceDocument } from '#server/db/entities/EvidenceDocument'
-import { FlowSheet } from '#server/db/entities/FlowSheet'
 import { Photo } from '#server/db/entities/Photo'
 import { Reading } from '#server/db/entities/Reading'
 import { ScoreSet } from '#server/db/entities/ScoreSet'
 import type { Submission } from '#server/db/entities/Submission'
+import { newestReadings } from '#server/services/submissions/gather-evidence'
 import { quantityInWords, viewNames } from '#shared/domain/rubric/words'
 import { resultSpot } from './result-spot'
 
@@ -16,7 +16,8 @@ export async function changedSince(em: EntityManager, submission: Submission, se
   const [readings, photos, sheets, documents] = [
     await em.find(Reading, { submission: submission.id }, { orderBy: { recordedAt: 'asc' } }),
     await em.find(Photo, { submission: submission.id }, { orderBy: { takenAt: 'asc' } }),
-    await em.find(FlowSheet, { submission: submission.id }, { orderBy: { addedAt: 'asc' } }),
+    // Results rest on a reading of a sheet; read anew, the sheet is new.
+    (await newestReadings(em, submission.head.id)).filter(one => one.sheet.$.submission.id === submission.id),
     await em.find(EvidenceDocument, { submission: submission.id }, { orderBy: { addedAt: 'asc' } }),
   ]
   const changes = [

@@ -2,6 +2,7 @@ import type { Review } from '#server/db/entities/Review'
 import { Refusal } from '#server/utils/refusal'
 import type { ReviewInput } from '#shared/contract/inputs'
 import type { Criterion } from '#shared/domain/rubric/criterion'
+import { instructorGives } from '#shared/domain/rubric/instructor-gives'
 import { sameSpot } from '#shared/domain/rubric/same-spot'
 import { sentence } from '#shared/domain/rubric/sentence'
 import type { StandingRow } from './point-results'
@@ -26,7 +27,7 @@ export function sentencesFor(rows: readonly StandingRow[], criteria: readonly Cr
   return rows.flatMap((row) => {
     const criterion = criteria.find(one => one.id === row.result.criterion)
     const state = standingState(row)
-    if (!criterion || state === 'does-not-apply' || (criterion.kind === 'judged' && state === 'not-assessed')) return []
+    if (!criterion || state === 'does-not-apply' || (instructorGives(criterion) && state === 'not-assessed')) return []
     const proposal = proposedSentence(criterion, row)
     const own = edited.find(one => isOf(row, one))?.text
     const text = own === undefined || own === '' ? proposal : own

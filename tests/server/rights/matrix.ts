@@ -65,6 +65,7 @@ export const matrix: readonly MatrixRow[] = [
 
   // submissions and evidence
   row('POST /api/submissions/{id}/ask', workOnHead, async (world, owner) => ({ path: `/api/submissions/${await world.draft(owner)}/ask`, body: {} })),
+  row('GET /api/submissions/{id}', seeHead, async (world, owner) => ({ path: `/api/submissions/${await world.scored(owner)}` })),
   row('GET /api/submissions/{id}/events', seeHead, async (world, owner) => ({ path: `/api/submissions/${await world.draft(owner)}/events` })),
   row('POST /api/uploads', { ...noRole, ...students, ...{ 'instructor': 'yes', 'other instructor': 'yes' } }, at('/api/uploads', { purpose: 'photo', filename: 'a.jpg', bytes: 10, contentType: 'image/jpeg', sha256: 'a'.repeat(64) })),
   row('GET /api/uploads/{id}', { ...noRole, 'student': 'yes', 'other student': 404, 'alumni': 'yes', 'instructor': 404, 'other instructor': 404 }, async (world, owner) => ({ path: `/api/uploads/${await world.upload(owner, 'photo')}` })),
@@ -78,6 +79,7 @@ export const matrix: readonly MatrixRow[] = [
   // review and feedback
   row('GET /api/review-queue', instructors, at('/api/review-queue')),
   row('GET /api/shop-board', { ...instructors, safety: 'yes' }, at('/api/shop-board')),
+  row('GET /api/submissions/{id}/review-sheet', taught, async (world, owner) => ({ path: `/api/submissions/${await world.scored(owner)}/review-sheet` })),
   row('POST /api/submissions/{id}/review', taught, async (world, owner) => ({ path: `/api/submissions/${await world.scored(owner)}/review`, body: { seen: 1, decision: 'send-back', point: 'hold-4', feedback: 'Take it again.' } })),
   row('GET /api/feedback', students, at('/api/feedback')),
   row('GET /api/submissions/{id}/feedback', workOnHead, async (world, owner) => ({ path: `/api/submissions/${await world.scored(owner)}/feedback` })),
