@@ -3,13 +3,13 @@ import { menuFor, type MenuItem, type MenuRole } from '~/composables/menu-for'
 /** The signed-in person and their menu, for the bar. Rights are the server's; this only decides which words are shown. */
 export function useMenu() {
   const { data } = useAuth()
-  const router = useRouter()
+  const pages = new Set(useRouter().getRoutes().map(page => page.path))
   const route = useRoute()
 
   const person = computed(() => data.value?.user ?? null)
   const items = computed<MenuItem[]>(() => {
     const roles: MenuRole[] = person.value?.roles ?? []
-    return menuFor(roles, path => router.resolve(path).matched.length > 0)
+    return menuFor(roles, path => pages.has(path))
   })
   const home = computed(() => items.value[0]?.path ?? '/')
   const isHere = (item: MenuItem): boolean => route.path === item.path || route.path.startsWith(`${item.path}/`)

@@ -5,16 +5,12 @@ import PhotoViewer from '~/components/photos/PhotoViewer.vue'
 const pins = [{ number: 1, x: 0.25, y: 0.5, criterion: 'W-01', title: 'Seat land', text: 'Even all round' }]
 // A window of 400 by 300 at (100, 50) of the screen: the test page lays nothing out itself.
 const box = { left: 100, top: 50, right: 500, bottom: 350, width: 400, height: 300, x: 100, y: 50, toJSON: () => ({}) }
-const kept = { width: Object.getOwnPropertyDescriptor(HTMLElement.prototype, 'clientWidth'), height: Object.getOwnPropertyDescriptor(HTMLElement.prototype, 'clientHeight'), rect: HTMLElement.prototype.getBoundingClientRect }
+const asLaidOut = HTMLElement.prototype.getBoundingClientRect
 beforeAll(() => {
-  Object.defineProperty(HTMLElement.prototype, 'clientWidth', { configurable: true, get: () => 400 })
-  Object.defineProperty(HTMLElement.prototype, 'clientHeight', { configurable: true, get: () => 300 })
   HTMLElement.prototype.getBoundingClientRect = () => box
 })
 afterAll(() => {
-  if (kept.width) Object.defineProperty(HTMLElement.prototype, 'clientWidth', kept.width)
-  if (kept.height) Object.defineProperty(HTMLElement.prototype, 'clientHeight', kept.height)
-  HTMLElement.prototype.getBoundingClientRect = kept.rect
+  HTMLElement.prototype.getBoundingClientRect = asLaidOut
 })
 
 async function viewer(more: Record<string, unknown> = {}) {
