@@ -3,6 +3,7 @@ import { Reading } from '#server/db/entities/Reading'
 import type { Actor } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
 import type { SpotView } from '#shared/contract/views'
+import { spotOf } from '#shared/domain/rubric/spot-of'
 import { readingValue } from '#shared/domain/rubric/reading-value'
 import { quantityInWords } from '#shared/domain/rubric/words'
 import { findHead } from './find-head'
@@ -18,7 +19,7 @@ export async function listSpots(em: EntityManager, app: App, actor: Actor, headI
   const readings = await em.find(Reading, { submission: { head: head.id }, voidedAt: null }, { populate: ['submission', 'instrument'], orderBy: { takenAt: 'desc', recordedAt: 'desc', id: 'asc' } })
   const spots = new Map<string, SpotView>()
   for (const one of readings) {
-    const spot = one.at?.spot ?? null
+    const spot = spotOf(one.at ?? {})
     const { op } = one.submission.$
     const place = { quantity: one.quantity, cylinder: one.cylinder ?? null, side: one.side ?? null, spot }
     const { value, standardUncertainty } = readingValue({ ...place, id: one.id, op, when: one.when ?? null, values: one.values, unit: one.baseUnit, instrument: one.instrument.$.code, expandedU: one.expandedU, takenAt: one.takenAt.getTime() }, one.baseUnit)

@@ -7,6 +7,7 @@ import { Override } from '#server/db/entities/Review'
 import type { ScoreSet } from '#server/db/entities/ScoreSet'
 import type { FoundHead } from '#server/services/heads/find-head'
 import type { EvidenceSet } from '#shared/domain/rubric/evidence'
+import { spotOf } from '#shared/domain/rubric/spot-of'
 import type { FoundSubmission } from './find-submission'
 
 /** Name and version of the judgement; part of what every result says it rests on. */
@@ -50,7 +51,7 @@ export async function gatherForPart(em: EntityManager, head: FoundHead, due: Pic
       part: due.part,
       ports: due.ports,
       readings: readings.map(one => ({
-        id: one.id, quantity: one.quantity, op: one.submission.$.op, cylinder: one.cylinder ?? null, side: one.side ?? null, spot: one.at?.spot ?? null, when: one.when ?? null,
+        id: one.id, quantity: one.quantity, op: one.submission.$.op, cylinder: one.cylinder ?? null, side: one.side ?? null, spot: spotOf(one.at ?? {}), when: one.when ?? null,
         values: one.values, unit: one.baseUnit, instrument: one.instrument.$.code, expandedU: one.expandedU, takenAt: one.takenAt.getTime(),
       })),
       photos: photos.map(one => ({ id: one.id, view: one.view, op: one.submission.$.op, cylinder: one.cylinder ?? null, side: one.side ?? null, spot: one.spot ?? null, takenAt: one.takenAt.getTime() })),
