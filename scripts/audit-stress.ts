@@ -90,7 +90,7 @@ async function writeWhileKilled(orm: MikroORM, url: string, { writers, events, k
   async function seal(): Promise<void> {
     while (killed < kills) {
       const sealer: ChildProcess = spawn(process.execPath, ['--import', 'tsx', 'scripts/lib/audit-stress-sealer.ts'], {
-        cwd: projectRoot, stdio: ['ignore', 'pipe', 'inherit'], env: { ...process.env, NUXT_DATABASE_URL: url, TSX_TSCONFIG_PATH: '.nuxt/tsconfig.server.json' },
+        cwd: projectRoot, stdio: ['ignore', 'pipe', 'inherit'], env: { ...process.env, NUXT_DATABASE_URL: url, TSX_TSCONFIG_PATH: 'scripts/tsconfig.json' },
       })
       const ended = once(sealer, 'exit')
       await Promise.race([once(sealer.stdout!, 'data'), ended])
