@@ -66,6 +66,7 @@ export const matrix: readonly MatrixRow[] = [
   // submissions and evidence
   row('POST /api/submissions/{id}/ask', workOnHead, async (world, owner) => ({ path: `/api/submissions/${await world.draft(owner)}/ask`, body: {} })),
   row('GET /api/submissions/{id}', seeHead, async (world, owner) => ({ path: `/api/submissions/${await world.scored(owner)}` })),
+  row('GET /api/submissions/{id}/gauges', workOnHead, async (world, owner) => ({ path: `/api/submissions/${await world.draft(owner)}/gauges` })),
   row('GET /api/submissions/{id}/events', seeHead, async (world, owner) => ({ path: `/api/submissions/${await world.draft(owner)}/events` })),
   row('POST /api/uploads', { ...noRole, ...students, ...{ 'instructor': 'yes', 'other instructor': 'yes' } }, at('/api/uploads', { purpose: 'photo', filename: 'a.jpg', bytes: 10, contentType: 'image/jpeg', sha256: 'a'.repeat(64) })),
   row('GET /api/uploads/{id}', { ...noRole, 'student': 'yes', 'other student': 404, 'alumni': 'yes', 'instructor': 404, 'other instructor': 404 }, async (world, owner) => ({ path: `/api/uploads/${await world.upload(owner, 'photo')}` })),
