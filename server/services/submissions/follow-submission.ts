@@ -81,7 +81,10 @@ export async function followSubmission(following: Following): Promise<() => void
   const off = app.signals.onSubmission(submissionId, () => inTurn(() => tell(true)))
   // Telling only what changed also makes good a signal that was lost with its connection.
   const checks = setInterval(() => inTurn(() => tell(false)), following.checkEveryMs ?? 60_000)
-  const beats = setInterval(() => inTurn(() => push({ id: last ?? '', event: 'beat', data: '' })), following.beatEveryMs ?? 15_000)
+  const beat = () => push({ id: last ?? '', event: 'beat', data: '' })
+  const beats = setInterval(() => inTurn(beat), following.beatEveryMs ?? 15_000)
   inTurn(() => tell(false))
+  // With nothing new to tell, this is what opens the stream on the other side.
+  inTurn(beat)
   return stop
 }
