@@ -1,16 +1,18 @@
 import type { EntityManager, Loaded } from '@mikro-orm/postgresql'
 import { PointRelease } from '#server/db/entities/PointRelease'
 import { PhotoPin, type Review } from '#server/db/entities/Review'
+import { stageNames } from '#server/services/school/stage-names'
 import type { FeedbackView } from '#shared/contract/views'
 import { pointName } from '#shared/domain/rubric/route-state'
 
-export type LoadedReview = Loaded<Review, 'by' | 'submission' | 'submission.head' | 'submission.head.rubric'>
+export type LoadedReview = Loaded<Review, 'by' | 'submission' | 'submission.head'>
 
-/** Reviews as people read them. Each comes with its person, submission, head and rubric. */
+/** Reviews as people read them. Each comes with its person, submission and head. */
 export async function feedbackViews(em: EntityManager, reviews: readonly LoadedReview[]): Promise<FeedbackView[]> {
   if (reviews.length === 0) return []
   const ids = reviews.map(review => review.id)
   const pins = await em.find(PhotoPin, { review: { $in: ids } }, { orderBy: { number: 'asc' } })
+  const stageName = await stageNames(em, reviews.map(review => review.submission.$.head.$.rubric.id))
   const releases = await em.find(PointRelease, { review: { $in: ids } })
   return reviews.map((review) => {
     const submission = review.submission.$
@@ -20,7 +22,7 @@ export async function feedbackViews(em: EntityManager, reviews: readonly LoadedR
       submissionId: submission.id,
       head: head.number,
       op: submission.op,
-      stageName: head.rubric.$.rubric.stages.find(stage => stage.op === submission.op)?.name ?? '',
+      stageName: stageName(head.rubric.id, submission.op),
       point: review.point ?? null,
       pointName: review.point ? pointName(review.point) : null,
       try: submission.tryNumber,

@@ -18,7 +18,7 @@ export async function listFeedback(em: EntityManager, actor: Actor, query: z.out
   const own: FilterQuery<Review> = { submission: { state: 'decided', head: { student: actor.id } } }
   const after = query.after === undefined ? null : readPageToken(query.after, keySchema)
   const older: FilterQuery<Review> = after === null ? {} : { $or: [{ at: { $lt: new Date(after[0]) } }, { at: new Date(after[0]), id: { $lt: after[1] } }] }
-  const reviews = await em.find(Review, { $and: [own, older] }, { populate: ['by', 'submission', 'submission.head', 'submission.head.rubric'], orderBy: { at: 'desc', id: 'desc' }, limit: query.limit + 1 })
+  const reviews = await em.find(Review, { $and: [own, older] }, { populate: ['by', 'submission', 'submission.head'], strategy: 'select-in', orderBy: { at: 'desc', id: 'desc' }, limit: query.limit + 1 })
   const page = reviews.slice(0, query.limit)
   const last = page[page.length - 1]
   return { items: await feedbackViews(em, page), next: reviews.length > query.limit && last ? writePageToken([last.at.toISOString(), last.id]) : null }

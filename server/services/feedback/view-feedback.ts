@@ -20,6 +20,6 @@ export async function viewFeedback(em: EntityManager, app: App, actor: Actor, su
   if (!submission) throw new Refusal('submission_not_found')
   const own = submission.head.$.student.id === actor.id
   if (own && submission.state !== 'decided') return []
-  const reviews = await em.find(Review, { submission: submission.id }, { populate: ['by', 'submission', 'submission.head', 'submission.head.rubric'], orderBy: { at: 'asc', id: 'asc' } })
+  const reviews = await em.find(Review, { submission: submission.id }, { populate: ['by', 'submission', 'submission.head'], strategy: 'select-in', orderBy: { at: 'asc', id: 'asc' } })
   return feedbackViews(em, reviews)
 }

@@ -2,6 +2,7 @@ import type { EntityManager } from '@mikro-orm/postgresql'
 import { z } from 'zod'
 import { Cohort } from '#server/db/entities/Cohort'
 import { Submission } from '#server/db/entities/Submission'
+import { stageNames } from '#server/services/school/stage-names'
 import type { Actor } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
 import { readPageToken, writePageToken } from '#server/utils/page-token'
@@ -63,7 +64,8 @@ export async function listReviewQueue(em: EntityManager, app: App, actor: Actor,
 const signedByMe = `exists (select 1 from review r join point_release pr on pr.review_id = r.id where r.submission_id = s.id and r.seen_version = s.version and pr.by_id = ? and pr.shut_again_at is null)`
 
 async function toItems(em: EntityManager, actor: Actor, page: readonly Row[], links: ReadonlyMap<string, Set<string>>, now: Date): Promise<QueueItem[]> {
-  const submissions = await em.find(Submission, { id: { $in: page.map(row => row.id) } }, { populate: ['head', 'head.student', 'head.cohort', 'head.rubric'] })
+  const submissions = await em.find(Submission, { id: { $in: page.map(row => row.id) } }, { populate: ['head', 'head.student', 'head.cohort'], strategy: 'select-in' })
+  const stageName = await stageNames(em, submissions.map(one => one.head.$.rubric.id))
   const states = await queueStates(em, page.map(row => row.id))
   return page.flatMap((row): QueueItem[] => {
     const submission = submissions.find(one => one.id === row.id)
@@ -76,7 +78,7 @@ async function toItems(em: EntityManager, actor: Actor, page: readonly Row[], li
       student: head.student.$.name,
       cohort: cohort?.name ?? null,
       op: submission.op,
-      stageName: head.rubric.$.rubric.stages.find(stage => stage.op === submission.op)?.name ?? '',
+      stageName: stageName(head.rubric.id, submission.op),
       part: submission.part,
       try: submission.tryNumber,
       point: submission.point ? { code: submission.point, name: pointName(submission.point) } : null,

@@ -25,7 +25,7 @@ export async function viewReviewSheet(em: EntityManager, app: App, actor: Actor,
   const loaded = await loadPointCase(em, submission)
   const criteria = criterionViews(loaded.rubric, loaded.criteria, loaded.rows)
   const verdict = await verdictFor(em, submission, loaded, actor.id, [])
-  const tries = await em.find(Review, { submission: { head: head.id, op: submission.op, part: submission.part } }, { populate: ['by', 'submission', 'submission.head', 'submission.head.rubric'], orderBy: { at: 'asc', id: 'asc' } })
+  const tries = await em.find(Review, { submission: { head: head.id, op: submission.op, part: submission.part } }, { populate: ['by', 'submission', 'submission.head'], strategy: 'select-in', orderBy: { at: 'asc', id: 'asc' } })
   return {
     submission: await withOthersEvidence(em, app, actor, await viewSubmission(em, app, actor, id), loaded),
     criteria,

@@ -2,6 +2,7 @@ import type { EntityManager, FilterQuery } from '@mikro-orm/postgresql'
 import { HeadStop } from '#server/db/entities/PointRelease'
 import { PracticeHead } from '#server/db/entities/PracticeHead'
 import { Submission } from '#server/db/entities/Submission'
+import { stageNames } from '#server/services/school/stage-names'
 import type { Actor } from '#server/utils/actor'
 import { hasRole } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
@@ -15,11 +16,12 @@ const mostHeads = 200
 export async function viewShopBoard(em: EntityManager, app: App, actor: Actor): Promise<ShopBoardView> {
   const now = app.clock.schoolNow()
   const cohorts: FilterQuery<PracticeHead> = hasRole(actor, 'safety') ? { cohort: { $ne: null } } : { cohort: { $in: [...(await staffLinks(em, actor, now)).keys()] } }
-  const heads = await em.find(PracticeHead, { $and: [cohorts, { state: { $in: ['received', 'working'] } }] }, { populate: ['student', 'cohort', 'rubric'], orderBy: { receivedAt: 'desc', id: 'asc' }, limit: mostHeads })
+  const heads = await em.find(PracticeHead, { $and: [cohorts, { state: { $in: ['received', 'working'] } }] }, { populate: ['student', 'cohort'], strategy: 'select-in', orderBy: { receivedAt: 'desc', id: 'asc' }, limit: mostHeads })
   const ids = heads.map(head => head.id)
   const stops = await em.find(HeadStop, { head: { $in: ids }, liftedAt: null }, { populate: ['by'], orderBy: { at: 'asc' } })
   const waiting = await em.find(Submission, { head: { $in: ids }, state: { $in: ['asked', 'scored'] }, $or: [{ point: { $ne: null } }, { stopStands: true }] }, { orderBy: { askedAt: 'asc' } })
 
+  const stageName = await stageNames(em, heads.map(head => head.rubric.id))
   const items = heads.flatMap((head) => {
     const cohort = head.cohort?.$
     if (!cohort) return []
@@ -31,7 +33,7 @@ export async function viewShopBoard(em: EntityManager, app: App, actor: Actor): 
       waiting: waiting.filter(one => one.head.id === head.id).map(one => ({
         id: one.id,
         op: one.op,
-        stageName: head.rubric.$.rubric.stages.find(stage => stage.op === one.op)?.name ?? '',
+        stageName: stageName(head.rubric.id, one.op),
         point: one.point ? { code: one.point, name: pointName(one.point) } : null,
         state: one.state,
         since: (one.askedAt ?? one.createdAt).toISOString(),
