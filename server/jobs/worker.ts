@@ -1,4 +1,5 @@
 import type { Job } from 'pg-boss'
+import { resumeScoring } from '../services/submissions/resume-scoring'
 import type { App } from '../utils/app'
 import { queues, type JobData, type QueueName } from '../utils/queues'
 import { handlers } from './handlers'
@@ -14,4 +15,6 @@ export async function startWorker(app: App): Promise<void> {
   }
   await app.boss.schedule('seal-audit', '* * * * *', { reason: 'minute' })
   await app.boss.schedule('clear-uploads', '17 3 * * *', {})
+  // Not awaited: new work need not stand behind it.
+  void resumeScoring(app).catch(fault => console.error('jobs: taking scoring up again:', fault))
 }
