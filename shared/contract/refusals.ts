@@ -70,7 +70,10 @@ export const refusals = {
   stop_of_safety: [403, 'The safety officer stopped this; only the safety officer lifts it.'],
   witness_not_told: [409, 'Nobody was told of this point yet.'],
   page_unknown: [422, 'That is not the `next` of a page of this list.'],
-  // rubric, compute
+  // rubric, lessons, compute
+  lesson_not_found: [404, 'There is no such lesson.'],
+  rubric_not_found: [404, 'There is no such version of the rubric.'],
+  rubric_stale: [409, 'Somebody saved a version since you began. Look at it first.'],
   must_unreachable: [422, 'A must of this rubric has no value that could be accepted.'],
   rubric_invalid: [422, 'The rubric has a mistake; it is named.'],
   compute_refused: [422, 'That cannot be computed.'],

@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import type { FlowRun, SheetHeader } from '../domain/airflow/flow-run'
 import type { CastingCard } from '../domain/geometry/casting'
-import type { CriterionState, RubricStage } from '../domain/rubric/criterion'
+import type { CriterionState, Rubric, RubricStage } from '../domain/rubric/criterion'
 import type { CriterionResult, ReadingEvidence } from '../domain/rubric/evidence'
 import type { Side } from '../domain/units/port'
 import { cleanText } from './text'
@@ -120,6 +120,9 @@ export interface BenchView {
 
 /** One account, as the office sees it. */
 export interface PersonView { id: string, name: string, email: string, roles: MeView['roles'], cohorts: string[], invited: boolean }
+export interface CastingView { code: string, name: string, version: number, card: CastingCard }
+export interface RubricSummary { version: number, note: string, savedAt: string, savedBy: string | null }
+export interface RubricView extends RubricSummary { rubric: Rubric }
 export interface InstrumentView { code: string, name: string, quantities: string[], expandedU: number, relative: boolean, unit: string, due: string | null }
 export interface LessonSummary { number: number, slug: string, title: string, module: string, ops: number[] }
 export interface LessonView extends LessonSummary { html: string, version: number, publishedAt: string }

@@ -24,7 +24,8 @@ import type { Harness } from '../harness'
 
 // The school's own rubric and castings, so that what is decided here is decided on what the school decides on.
 const content = <Value>(name: string): Value => JSON.parse(readFileSync(new URL(`../../../content/school/${name}`, import.meta.url), 'utf8')) as Value
-const rubric = content<Rubric>('rubric.json')
+export const schoolRubric = content<Rubric>('rubric.json')
+const rubric = schoolRubric
 const castings = content<CastingCard[]>('castings.json')
 
 /** Change of one made result: without cylinder or side, of every result of that criterion. */
@@ -54,7 +55,7 @@ export interface TestSchool {
 }
 
 /** Everything the program needs before anybody has done anything. */
-export async function makeSchool(harness: Harness): Promise<TestSchool> {
+export async function makeSchool(harness: Pick<Harness, 'app'>): Promise<TestSchool> {
   const em = (): EntityManager => harness.app.orm.em.fork()
   const now = (): Date => harness.app.clock.schoolNow()
   const card = castings.find(one => one.scope === 'D')

@@ -1,4 +1,5 @@
 import type { Actor } from '#server/utils/actor'
+import { schoolRubric } from '../review/school'
 import type { World } from './world'
 
 /*
@@ -91,6 +92,17 @@ export const matrix: readonly MatrixRow[] = [
   row('POST /api/people/invitations', { ...noRole, admin: 'yes' }, async () => ({ path: '/api/people/invitations', body: { name: 'Wen Sallis', email: `${crypto.randomUUID()}@sallowbeck.example`, roles: ['student'] } })),
   row('GET /api/jobs/stuck', { ...noRole, admin: 'yes' }, at('/api/jobs/stuck')),
   row('POST /api/jobs/{id}/rerun', { ...noRole, admin: 404 }, at('/api/jobs/00000000-0000-4000-8000-000000000000/rerun', {})),
+
+  // what the school works by
+  row('GET /api/lessons', signedIn, at('/api/lessons')),
+  row('GET /api/lessons/{slug}', signedIn, async world => ({ path: `/api/lessons/${await world.lesson()}` })),
+  row('GET /api/instruments', signedIn, at('/api/instruments')),
+  row('GET /api/castings', signedIn, at('/api/castings')),
+  row('GET /api/benches', signedIn, at('/api/benches')),
+  row('GET /api/rubrics', signedIn, at('/api/rubrics')),
+  row('GET /api/rubrics/{version}', signedIn, at('/api/rubrics/1')),
+  // The second of them is stale, which is a yes to the person.
+  row('POST /api/rubrics', instructors, async () => ({ path: '/api/rubrics', body: { after: 1, note: 'The same again.', rubric: schoolRubric } })),
 
   // numbers by hand
   row('GET /api/compute', signedIn, at('/api/compute')),

@@ -1,6 +1,8 @@
 import { createHash, randomUUID } from 'node:crypto'
 import { BenchPlace } from '#server/db/entities/BenchPlace'
 import { Cohort } from '#server/db/entities/Cohort'
+import { Lesson } from '#server/db/entities/Lesson'
+import { LessonVersion } from '#server/db/entities/LessonVersion'
 import { HeadStop, WitnessCall } from '#server/db/entities/PointRelease'
 import { PracticeHead } from '#server/db/entities/PracticeHead'
 import { Submission } from '#server/db/entities/Submission'
@@ -30,6 +32,8 @@ export interface World {
   /** A received upload of this person. */
   upload: (owner: Actor, purpose: UploadPurpose) => Promise<string>
   stop: (owner: Actor, by: Actor) => Promise<string>
+  /** Slug of a published lesson. */
+  lesson: () => Promise<string>
   /** Op 60 with Witness 1 told a moment ago. */
   told: (owner: Actor) => Promise<string>
 }
@@ -78,6 +82,15 @@ export async function makeWorld(harness: Harness, school: TestSchool): Promise<W
 
   return {
     harness, school, bettany, freya, upload,
+    async lesson() {
+      count += 1
+      const slug = `lesson-${count}`
+      await school.em().transactional(async (tx) => {
+        const lesson = tx.create(Lesson, { number: count, slug, title: 'Scribing', module: 'Lines', ops: [40], createdAt: school.now() })
+        tx.persist(tx.create(LessonVersion, { lesson, version: 1, markdown: '# Scribing', publishedAt: school.now() }))
+      })
+      return slug
+    },
     head: owner => head(owner),
     draft: owner => draft(owner),
     async scored(owner) {
