@@ -1,9 +1,12 @@
 import { defineStore } from 'pinia'
-import { ref, toRaw } from 'vue'
+import { ref } from 'vue'
 import { openDevice } from './outbox/device-database'
 
 /** What stands on the reading pad and was not yet sent. */
 export interface ReadingDraft { quantity: string, cylinder: number | null, side: 'intake' | 'exhaust' | null, spot: string | null, when: 'before' | 'after' | null, values: string[], typing: string, unit: string, instrument: string }
+
+/** Free of the proxies the screen puts round it: the browser's database takes plain data only. */
+const plain = (draft: ReadingDraft): ReadingDraft => ({ ...draft, values: [...draft.values] })
 
 /** Figures on the pad, one draft for each person and submission, kept in the browser's database as they are typed. */
 export const useReadingDrafts = defineStore('reading-drafts', () => {
@@ -20,7 +23,7 @@ export const useReadingDrafts = defineStore('reading-drafts', () => {
   async function keep(person: string, submissionId: string, draft: ReadingDraft) {
     const key = keyOf(person, submissionId)
     drafts.value[key] = draft
-    await (await openDevice()).put('drafts', { key, person, value: structuredClone(toRaw(draft)), keptAt: Date.now() })
+    await (await openDevice()).put('drafts', { key, person, value: plain(draft), keptAt: Date.now() })
   }
 
   async function discard(person: string, submissionId: string) {
