@@ -67,7 +67,7 @@ export async function decide(school: TestSchool, submissionId: string, decision:
 }
 
 /** A reading put in the way every piece of evidence goes in: the submission locked and looked at, then told. */
-export async function read(harness: Harness, school: TestSchool, submissionId: string, given: { quantity: string, values: number[], cylinder?: number, side?: 'intake' | 'exhaust', spot?: string, unit?: string, u?: number, when?: 'before' | 'after', by?: Actor }): Promise<string> {
+export async function read(harness: Pick<Harness, 'app'>, school: TestSchool, submissionId: string, given: { quantity: string, values: number[], cylinder?: number, side?: 'intake' | 'exhaust', spot?: string, unit?: string, u?: number, when?: 'before' | 'after', by?: Actor }): Promise<string> {
   const { app } = harness
   return school.em().transactional(async (tx) => {
     const by = given.by ?? school.imre
