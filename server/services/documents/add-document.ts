@@ -25,6 +25,6 @@ export async function addDocument(em: EntityManager, app: App, actor: Actor, sub
     recordEvent(tx, { actor: actor.id, action: 'document-added', subject: `submission:${submission.id}`, detail: { document: id, sha256: upload.sha256 } })
     await tx.flush()
     await afterEvidence(tx, app, submission)
-    return viewDocument(app, await tx.findOneOrFail(EvidenceDocument, { id }, { populate: ['upload'] }))
+    return viewDocument(await tx.findOneOrFail(EvidenceDocument, { id }, { populate: ['upload'] }))
   })
 }

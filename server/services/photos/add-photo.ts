@@ -47,7 +47,7 @@ export async function addPhoto(em: EntityManager, app: App, actor: Actor, submis
     await tx.flush()
     await enqueue(app, tx, 'prepare-photo', { photoId: id })
     await afterEvidence(tx, app, submission)
-    return viewPhoto(app, await tx.findOneOrFail(Photo, { id }, { populate: ['addedBy'] }))
+    return viewPhoto(await tx.findOneOrFail(Photo, { id }, { populate: ['addedBy'] }))
   })
 }
 

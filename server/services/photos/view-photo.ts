@@ -1,14 +1,13 @@
 import type { Loaded } from '@mikro-orm/postgresql'
 import type { Photo } from '#server/db/entities/Photo'
-import type { App } from '#server/utils/app'
 import type { PhotoView } from '#shared/contract/views'
 import { viewNames } from '#shared/domain/rubric/words'
 
 const states = new Map<string, PhotoView['state']>([['being-measured', 'being measured'], ['cannot-use', 'cannot use']])
 
-/** A photo as pages show it: signed addresses of the pictures we made ourselves, never of the original. */
-export async function viewPhoto(app: Pick<App, 'storage'>, photo: Loaded<Photo, 'addedBy'>): Promise<PhotoView> {
-  const sign = (key: string | null | undefined) => (key ? app.storage.signGet({ key, contentType: 'image/webp', filename: `${photo.view}.webp`, disposition: 'inline' }) : null)
+/** A photo as pages show it. Its pictures are fetched through our own address, which signs anew each time: a page may stand open for hours. */
+export function viewPhoto(photo: Loaded<Photo, 'addedBy'>): PhotoView {
+  const address = (size: 'thumb' | 'preview', key: string | null | undefined) => (key ? `/api/photos/${photo.id}/image?size=${size}` : null)
   return {
     id: photo.id,
     view: photo.view,
@@ -18,8 +17,8 @@ export async function viewPhoto(app: Pick<App, 'storage'>, photo: Loaded<Photo, 
     spot: photo.spot ?? null,
     state: states.get(photo.state) ?? photo.state as PhotoView['state'],
     problem: photo.problem ?? null,
-    thumbUrl: await sign(photo.thumbKey),
-    previewUrl: await sign(photo.previewKey),
+    thumbUrl: address('thumb', photo.thumbKey),
+    previewUrl: address('preview', photo.previewKey),
     width: photo.width ?? null,
     height: photo.height ?? null,
     takenAt: photo.takenAt.toISOString(),

@@ -74,6 +74,7 @@ export const matrix: readonly MatrixRow[] = [
   row('POST /api/uploads/{id}/complete', { ...noRole, 'student': 'yes', 'other student': 404, 'alumni': 'yes', 'instructor': 404, 'other instructor': 404 }, async (world, owner) => ({ path: `/api/uploads/${await world.upload(owner, 'photo')}/complete`, body: {} })),
   row('POST /api/submissions/{id}/photos', workOnHead, async (world, owner, caller) => ({ path: `/api/submissions/${await world.draft(owner)}/photos`, body: { uploadId: await world.upload(caller, 'photo'), view: 'view-12', cylinder: 1, side: 'intake' } })),
   row('POST /api/submissions/{id}/documents', workOnHead, async (world, owner, caller) => ({ path: `/api/submissions/${await world.draft(owner)}/documents`, body: { uploadId: await world.upload(caller, 'document') } })),
+  row('GET /api/documents/{id}/file', workOnHead, async (world, owner) => ({ path: `/api/documents/${await world.document(owner)}/file` })),
   // The safety officer sees view-13 only; this is a seat close-up.
   row('GET /api/photos/{id}/image', { ...workOnHead, safety: 404 }, async (world, owner) => ({ path: `/api/photos/${await world.photo(owner)}/image` })),
   row('POST /api/photos/{id}/set-aside', workOnHead, async (world, owner) => ({ path: `/api/photos/${await world.photo(owner)}/set-aside`, body: {} })),

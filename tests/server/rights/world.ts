@@ -9,6 +9,7 @@ import { Submission } from '#server/db/entities/Submission'
 import { Photo } from '#server/db/entities/Photo'
 import { Upload, type UploadPurpose } from '#server/db/entities/Upload'
 import { User } from '#server/db/entities/User'
+import { addDocument } from '#server/services/documents/add-document'
 import type { Actor } from '#server/utils/actor'
 import type { SubmissionPart } from '#shared/domain/rubric/evidence'
 import type { Harness } from '../harness'
@@ -31,6 +32,8 @@ export interface World {
   photo: (owner: Actor, view?: string) => Promise<string>
   /** A received upload of this person. */
   upload: (owner: Actor, purpose: UploadPurpose) => Promise<string>
+  /** A document of a fresh draft. */
+  document: (owner: Actor) => Promise<string>
   stop: (owner: Actor, by: Actor) => Promise<string>
   /** Slug of a published lesson. */
   lesson: () => Promise<string>
@@ -110,6 +113,11 @@ export async function makeWorld(harness: Harness, school: TestSchool): Promise<W
         tx.persist(made)
         return made.id
       })
+    },
+    async document(owner) {
+      const submissionId = await draft(owner)
+      const uploadId = await upload(owner, 'document')
+      return (await addDocument(school.em(), harness.app, owner, submissionId, { uploadId, note: 'damage list' })).id
     },
     async stop(owner, by) {
       const headId = await head(owner)

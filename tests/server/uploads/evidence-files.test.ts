@@ -157,7 +157,9 @@ describe('a document as evidence', () => {
     const { id } = await sendFile(imre, Buffer.from('None found.'), { purpose: 'document', filename: 'damage list.txt', contentType: 'text/plain' })
     const answer = await imre.post<{ url: string }>(`/api/submissions/${draft}/documents`, { uploadId: id, note: 'damage list' }, randomUUID())
     expect(answer).toMatchObject({ status: 201, body: { filename: 'damage list.txt', note: 'damage list' } })
-    expect((await fetch(answer.body.url)).headers.get('content-disposition')).toMatch(/^attachment/)
+    const saved = await imre.get(answer.body.url)
+    expect(saved.status).toBe(302)
+    expect((await fetch(saved.headers.get('location') ?? '')).headers.get('content-disposition')).toMatch(/^attachment/)
   })
 })
 
