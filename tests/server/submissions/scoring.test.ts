@@ -3,6 +3,7 @@ import { CriterionResult } from '#server/db/entities/CriterionResult'
 import { PointRelease } from '#server/db/entities/PointRelease'
 import { ScoreSet } from '#server/db/entities/ScoreSet'
 import { Submission } from '#server/db/entities/Submission'
+import { askForRelease } from '#server/services/submissions/ask-for-release'
 import { scoreSubmission } from '#server/services/submissions/score-submission'
 import { startWorker } from '#server/jobs/worker'
 import { startApp } from '#server/utils/start-app'
@@ -158,3 +159,27 @@ it('shows the score within a second of Ask, by a worker in another process\'s pl
     await worker.close()
   }
 })
+
+it('scores what a killed worker had taken up within twenty seconds, though it never comes back', async () => {
+  await harness.app.boss.purgeQueue('score-submission')
+  const worker = await startApp({ ...harness.config, role: 'worker' })
+  await startWorker(worker)
+  try {
+    await lands([1.65])
+    const from = performance.now()
+    await school.em().transactional(async (tx) => {
+      await askForRelease(tx, harness.app, school.imre, id, undefined)
+      // As a worker leaves it that took the job and died: taken, and nobody at it.
+      await tx.getConnection().execute('update pgboss.job set state = \'active\', started_on = now() where name = \'score-submission\' and data ->> \'submissionId\' = ?', [id], 'run', tx.getTransactionContext())
+    })
+    await expect.poll(async () => (await view()).state, { timeout: 25_000, interval: 100 }).toBe('scored')
+    const waited = (performance.now() - from) / 1000
+    console.log(`taken up again after ${waited.toFixed(1)} s`)
+    expect(waited).toBeGreaterThan(2)
+    expect(waited).toBeLessThan(20)
+    expect(await sets()).toHaveLength(1)
+  }
+  finally {
+    await worker.close()
+  }
+}, 40_000)
