@@ -50,6 +50,7 @@ export const refusals = {
   card_not_found: [422, 'There is no scale card with that number.'],
   reading_not_plausible: [422, 'That figure cannot be right in that unit.'],
   reading_void_unknown: [422, 'The reading to take the place of is not in this submission.'],
+  taken_in_future: [422, 'That time is still to come by our clock. Set the clock of the phone, then send it again.'],
   instrument_unknown: [422, 'Pick the instrument from the list.'],
   instrument_unfit: [422, 'That instrument does not read this quantity.'],
   quantity_unknown: [422, 'The rubric does not know this quantity.'],
