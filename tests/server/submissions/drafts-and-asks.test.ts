@@ -44,10 +44,21 @@ it('makes the draft of the part that is due, then gives that one', async () => {
 })
 
 it('makes one draft for two tabs that begin at once', async () => {
-  const both = await Promise.all([begin(), begin(), begin()])
-  expect(both.map(one => one.status).sort()).toEqual([200, 200, 201])
+  const tabs = await Promise.all([api.as(school.imre), api.as(school.imre), api.as(school.hanne), api.as(school.imre), api.as(school.hanne), api.as(school.imre)])
+  const both = await Promise.all(tabs.map(tab => tab.post<{ id: string }>(`/api/heads/${headId}/stages/70/submissions`)))
+  expect(both.map(one => one.status).sort()).toEqual([200, 200, 200, 200, 200, 201])
   expect(new Set(both.map(one => one.body.id)).size).toBe(1)
   expect(await school.em().count(Submission, { head: headId, op: 70 })).toBe(1)
+})
+
+it('gives nobody the right to add because they may look: an office worker who also teaches elsewhere', async () => {
+  const both = await school.person('Two Posts', ['instructor', 'admin'])
+  const caller = await api.as(both)
+  expect((await caller.get(`/api/heads/${headId}`)).status).toBe(200)
+  expect(await caller.post(`/api/heads/${headId}/stages/70/submissions`)).toMatchObject({ status: 404, body: { code: 'head_not_found' } })
+  const { body: { id } } = await begin()
+  expect(await caller.post(`/api/submissions/${id}/ask`)).toMatchObject({ status: 404, body: { code: 'submission_not_found' } })
+  await expect(read(harness, school, id, { quantity: 'seat-land', values: [1.6], by: both })).rejects.toMatchObject({ code: 'submission_not_found' })
 })
 
 it('takes the cylinder a student begins at, and refuses one the head does not have', async () => {
