@@ -44,8 +44,8 @@ export default defineConfig(async () => ({
   test: {
     projects: [
       plain('domain'),
-      // Each file gets a database of its own, so files may run side by side; two cores bear two.
-      plain('server', { globalSetup: ['tests/server/global-setup.ts'], testTimeout: 30_000, hookTimeout: 60_000, maxWorkers: 2 }),
+      // Each file gets a database of its own, so files may run side by side; two cores bear two. A number of workers of its own asks for a turn of its own.
+      plain('server', { globalSetup: ['tests/server/global-setup.ts'], testTimeout: 30_000, hookTimeout: 60_000, maxWorkers: 2, sequence: { groupOrder: 1 } }),
       plain('meta', { testTimeout: 30_000 }),
       ...(wantsApp() ? await app() : []),
     ],
