@@ -56,6 +56,11 @@ export const refusals = {
   quantity_unknown: [422, 'The rubric does not know this quantity.'],
   sheet_unreadable: [422, 'The sheet cannot be read.'],
   sheet_too_large: [422, 'The spreadsheet unpacks to more than a flow sheet can be.'],
+  sheet_not_found: [404, 'There is no such flow sheet that you may see.'],
+  sheet_set_aside: [409, 'This sheet was set aside. Send the file again to use it.'],
+  sheet_open_questions: [409, 'Answer what the sheet leaves open first.'],
+  sheet_cannot_be_right: [409, 'This sheet cannot be right as it is. Run it again, or set it aside.'],
+  sheet_open: [409, 'The sheet still has a question or a reading that cannot be right. Answer it, or flow it again.'],
   // review
   review_stale: [409, 'The submission changed since you opened it. Look at what is new first.'],
   release_forbidden: [409, 'The release rule does not allow this.'],
