@@ -18,6 +18,8 @@ export function useReadingPad(submissionId: string, submission: Ref<SubmissionVi
   const spotKey = ref<string | null>(null)
   const values = ref<string[]>([])
   const typing = ref('')
+  /** Spot in the student's own words, where the want names none. */
+  const where = ref('')
   const unit = ref('mm')
   const instrument = ref('')
 
@@ -32,14 +34,15 @@ export function useReadingPad(submissionId: string, submission: Ref<SubmissionVi
     spotKey.value = next
     values.value = []
     typing.value = ''
+    where.value = ''
     if (!fit.value.some(one => one.code === instrument.value)) instrument.value = fit.value[0]?.code ?? ''
   }
 
   function pendingAt(one: PadSpot): boolean {
-    return outbox.items.some(item => item.kind === 'reading' && item.submissionId === submissionId && item.input.quantity === one.want.quantity && item.input.cylinder === one.want.cylinder && item.input.side === one.want.side && (item.input.at?.spot ?? null) === one.want.spot && (item.input.when ?? null) === one.want.when)
+    return outbox.items.some(item => item.kind === 'reading' && item.submissionId === submissionId && item.input.quantity === one.want.quantity && item.input.cylinder === one.want.cylinder && item.input.side === one.want.side && (one.want.spot === null || (item.input.at?.spot ?? null) === one.want.spot) && (item.input.when ?? null) === one.want.when)
   }
 
-  const draft = computed<ReadingDraft | null>(() => spot.value && { quantity: spot.value.want.quantity ?? '', cylinder: spot.value.want.cylinder, side: spot.value.want.side, spot: spot.value.want.spot, when: spot.value.want.when, values: values.value, typing: typing.value, unit: unit.value, instrument: instrument.value })
+  const draft = computed<ReadingDraft | null>(() => spot.value && { quantity: spot.value.want.quantity ?? '', cylinder: spot.value.want.cylinder, side: spot.value.want.side, spot: spot.value.want.spot, where: where.value, when: spot.value.want.when, values: values.value, typing: typing.value, unit: unit.value, instrument: instrument.value })
   watch(draft, (now) => {
     if (me.value && now && (now.typing || now.values.length)) void drafts.keep(me.value.id, submissionId, now)
   })
@@ -51,6 +54,7 @@ export function useReadingPad(submissionId: string, submission: Ref<SubmissionVi
     if (!kept) return choose()
     choose([kept.quantity, kept.cylinder, kept.side, kept.spot, kept.when].join('|'))
     values.value = kept.values
+    where.value = kept.where ?? ''
     typing.value = kept.typing
     unit.value = kept.unit
     instrument.value = kept.instrument
@@ -73,11 +77,11 @@ export function useReadingPad(submissionId: string, submission: Ref<SubmissionVi
     if (!now || !now.values.length || !me.value) return
     await outbox.addReading(submissionId, {
       quantity: now.quantity, cylinder: now.cylinder, side: now.side, values: [...now.values], unit: now.unit, instrument: now.instrument, takenAt: new Date().toISOString(),
-      ...(now.spot ? { at: { spot: now.spot } } : {}), ...(now.when ? { when: now.when } : {}),
+      ...(now.spot || now.where.trim() ? { at: { spot: now.spot ?? now.where.trim() } } : {}), ...(now.when ? { when: now.when } : {}),
     })
     await drafts.discard(me.value.id, submissionId)
     values.value = []
     choose()
   }
-  return { spots, spot, spotKey, fit, values, typing, unit, instrument, choose, restore, addRepeat, dropRepeat, send, pendingAt }
+  return { spots, spot, spotKey, fit, values, typing, where, unit, instrument, choose, restore, addRepeat, dropRepeat, send, pendingAt }
 }

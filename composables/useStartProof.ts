@@ -8,13 +8,15 @@ export function useStartProof() {
   const api = useApi()
   const busy = ref(false)
   const failure = ref<Failure | null>(null)
-  const key = crypto.randomUUID()
+  let key = crypto.randomUUID()
 
   async function start(headId: string, op: number) {
     busy.value = true
     const answer = await api.post<SubmissionView>(`/api/heads/${headId}/stages/${op}/submissions`, {}, key)
     busy.value = false
     failure.value = answer.ok ? null : answer.failure
+    // The same press again says the same; another stage is another call.
+    if (answer.ok || answer.failure.status) key = crypto.randomUUID()
     if (answer.ok) await navigateTo(`/proof/${answer.value.id}`)
   }
   return { busy, failure, start }

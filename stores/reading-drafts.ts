@@ -3,7 +3,7 @@ import { ref } from 'vue'
 import { openDevice } from './outbox/device-database'
 
 /** What stands on the reading pad and was not yet sent. */
-export interface ReadingDraft { quantity: string, cylinder: number | null, side: 'intake' | 'exhaust' | null, spot: string | null, when: 'before' | 'after' | null, values: string[], typing: string, unit: string, instrument: string }
+export interface ReadingDraft { quantity: string, cylinder: number | null, side: 'intake' | 'exhaust' | null, spot: string | null, where: string, when: 'before' | 'after' | null, values: string[], typing: string, unit: string, instrument: string }
 
 /** Free of the proxies the screen puts round it: the browser's database takes plain data only. */
 const plain = (draft: ReadingDraft): ReadingDraft => ({ ...draft, values: [...draft.values] })

@@ -38,7 +38,6 @@ function isOfPart(want: Want, evidence: EvidenceSet): boolean {
 /**
  * What a criterion wants, spread over the ports the part covers and over its spots, with how much of each is in.
  *
- * A criterion measured from a photo wants, until the program measures it, a typed reading of its quantity besides.
  * Nothing for ports the criterion has no band for.
  *
  * Source: handbook 3.6, `wants`.

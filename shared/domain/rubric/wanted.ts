@@ -1,9 +1,11 @@
 import { wallSpots } from '../geometry/wall-spots'
-import type { RubricStage } from './criterion'
+import type { Criterion, RubricStage } from './criterion'
 import { criteriaOfPart } from './covers'
 import { doesNotApplyBecause } from './does-not-apply'
 import type { EvidenceSet } from './evidence'
+import { allReadingsOf } from './readings-of'
 import { sameSpot } from './same-spot'
+import { unitsOf } from './units-of'
 import { wantItems, type WantItem } from './want-items'
 import { wantInWords } from './want-in-words'
 import { viewNames } from './words'
@@ -32,7 +34,7 @@ export function wantedOf(stage: RubricStage, evidence: EvidenceSet): WantedItem[
   for (const criterion of criteriaOfPart(stage, evidence.part)) {
     if (doesNotApplyBecause(criterion, evidence) !== null) continue
     const own = new Map<string, WantItem>()
-    for (const item of wantItems(criterion, evidence)) {
+    for (const item of [...wantItems(criterion, evidence), ...typedForPhoto(criterion, evidence)]) {
       const key = keyOf(item)
       const before = own.get(key)
       own.set(key, before ? { ...before, count: before.count + item.count, note: joinNotes(before.note, item.note) } : item)
@@ -49,6 +51,15 @@ export function wantedOf(stage: RubricStage, evidence: EvidenceSet): WantedItem[
     }
   }
   return [...merged.values()]
+}
+
+/** A criterion measured from a photo wants, until the program measures it, a reading a person types: one at each unit, wherever the worst is. */
+function typedForPhoto(criterion: Criterion, evidence: EvidenceSet): WantItem[] {
+  if (criterion.kind !== 'photo-measured' || criterion.unit === 'yes/no' || criterion.wants.some(want => want.kind === 'reading')) return []
+  return unitsOf(criterion, evidence).map(unit => ({
+    kind: 'reading', view: null, quantity: criterion.quantity, ...unit, spot: null, when: null, note: 'read by you where it is worst; say where', count: 1,
+    have: allReadingsOf(evidence, { quantity: criterion.quantity, unit }).length,
+  }))
 }
 
 function keyOf(item: WantItem): string {

@@ -79,3 +79,19 @@ describe('the wanted proof', () => {
     expect(before.filter(item => item.kind === 'reading').map(item => item.when)).toEqual(['before', 'before', 'before', 'before', 'before'])
   })
 })
+
+describe('what the program will measure from a photo one day', () => {
+  const evidence = nothing(60, { part: 'first', ports: [{ cylinder: 1, side: 'intake' }, { cylinder: 1, side: 'exhaust' }] })
+  const typed = (given: typeof evidence) => wantedOf(stageOf('C'), given).filter(item => item.kind === 'reading' && item.quantity === 'bore-line-margin')
+
+  it('is wanted as a typed reading besides, once a cylinder, and is in when one is read anywhere', () => {
+    expect(typed(evidence)).toMatchObject([{ cylinder: 1, spot: null, have: 0, count: 1, criteria: ['C-01'] }])
+    expect(typed({ ...evidence, readings: [reading('bore-line-margin', '8', 0.39, { op: 60, cylinder: 1, side: null })] })).toMatchObject([{ have: 1 }])
+  })
+
+  it('is asked of each side that has a band of its own, and never of a yes or no', () => {
+    const wanted = wantedOf(stageOf('C'), evidence)
+    expect(wanted.filter(item => item.quantity === 'shroud-gap').map(item => item.side)).toEqual(['intake', 'exhaust'])
+    expect(wantedOf(stageOf('L'), nothing(40)).some(item => item.quantity === 'no-grind-hatching')).toBe(false)
+  })
+})
