@@ -1,27 +1,26 @@
 import { Refusal } from '#server/utils/refusal'
+import type { ReadingQuantity } from '#shared/contract/quantities'
 import type { CastingCard } from '#shared/domain/geometry/casting'
 import { nominalLength } from '#shared/domain/geometry/nominal-length'
-import type { Side } from '#shared/domain/units/port'
 import { plausibleLength } from '#shared/domain/units/plausible-length'
-import type { QuantityRead } from './quantity-read'
+import type { Side } from '#shared/domain/units/port'
 
 /**
- * Refuses figures that cannot be what they are said to be, which is how a slip of unit shows; a bad cut is never refused.
+ * Refuses what no iron can be: nearly always another unit than was meant. Never a judgement of the work.
  *
- * @param values base unit, in the order typed
- * @throws {Refusal} reading_not_plausible
+ * @param values in the base unit, one for each of `typed`
+ * @throws {Refusal} reading_not_plausible, with `issues` that name each figure
  */
-export function refuseImplausible(card: CastingCard, { name, quantity }: QuantityRead, side: Side | null, values: readonly number[]): void {
-  const nominal = nominalLength(card, name, side)
+export function refuseImplausible(quantity: { name: string, is: ReadingQuantity }, values: readonly number[], typed: readonly string[], unit: string, of: { card: CastingCard, side: Side | null }): void {
+  const { is, name } = quantity
+  const nominal = nominalLength(of.card, name, of.side)
   const issues = values.flatMap((value, index) => {
-    const against = nominal === null ? null : plausibleLength(quantity.title, value, nominal)
-    const message = against?.plausible === false ? against.message : value < quantity.least || value > quantity.most ? outside(quantity, value) : null
-    return message === null ? [] : [{ path: `values.${index}`, code: 'not-plausible', message }]
+    const given = `${typed[index]?.trim() ?? ''} ${unit}`
+    if (value < is.least || value > is.most) return [{ path: `values.${index}`, code: 'not-plausible', message: `${given} cannot be the ${is.title}: it lies between ${is.least} and ${is.most} ${is.baseUnit}. Check the unit.` }]
+    if (nominal === null) return []
+    const found = plausibleLength(is.title, value, nominal)
+    return found.plausible ? [] : [{ path: `values.${index}`, code: 'not-plausible', message: found.message }]
   })
-  if (issues.length > 0) throw new Refusal('reading_not_plausible', issues[0]?.message, { issues })
-}
-
-function outside({ title, baseUnit, least, most }: QuantityRead['quantity'], value: number): string {
-  const unit = baseUnit === 'count' || baseUnit === 'yes/no' || baseUnit === 'pH' ? '' : ` ${baseUnit}`
-  return `${Number(value.toPrecision(4))}${unit} cannot be the ${title}: it lies between ${least} and ${most}${unit} on any head. Check the figure and its unit.`
+  const [first] = issues
+  if (first) throw new Refusal('reading_not_plausible', first.message, { issues })
 }

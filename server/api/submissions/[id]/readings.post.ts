@@ -4,7 +4,7 @@ import { idParams, readingInput } from '#shared/contract/inputs'
 
 export default defineRoute({
   access: ['student', 'instructor'],
-  summary: 'Keeps a reading of one quantity at one spot, its repeats exactly as typed.',
+  summary: 'Keeps readings of one quantity at one spot, exactly as typed; several values are repeats.',
   params: idParams,
   body: readingInput,
   status: 201,
