@@ -60,7 +60,6 @@ export const refusals = {
   sheet_set_aside: [409, 'This sheet was set aside. Send the file again to use it.'],
   sheet_open_questions: [409, 'Answer what the sheet leaves open first.'],
   sheet_cannot_be_right: [409, 'This sheet cannot be right as it is. Run it again, or set it aside.'],
-  sheet_open: [409, 'The sheet still has a question or a reading that cannot be right. Answer it, or flow it again.'],
   // review
   review_stale: [409, 'The submission changed since you opened it. Look at what is new first.'],
   release_forbidden: [409, 'The release rule does not allow this.'],

@@ -4,9 +4,6 @@ import { decodeSheetBytes } from '#shared/domain/airflow/sheet/decode-sheet-byte
 import type { SheetTable } from '#shared/domain/airflow/sheet/sheet-reading'
 import { splitDelimitedText } from '#shared/domain/airflow/sheet/split-delimited-text'
 
-/** A flow sheet is a page; of what is larger no more is looked at, or it is refused. */
-const limits = { rows: 5000, columns: 64, characters: 400 }
-
 /**
  * A file as tables of cells that have something in them: one for a text, one a worksheet for a spreadsheet.
  *
@@ -26,9 +23,4 @@ function fromText(bytes: Uint8Array): SheetTable {
   // Only the first bytes were looked at when it came.
   if (text.includes('\0')) throw new Refusal('sheet_unreadable', 'This is no text: save the sheet as CSV or XLSX and send that.')
   return splitDelimitedText(text)
-}
-
-/** Cells as the database can keep them: no NUL, no half of a character, not even where a long cell is cut. */
-function keepable(rows: readonly string[][]): string[][] {
-  return rows.map(row => row.slice(0, limits.columns).map(cell => cell.slice(0, limits.characters).replaceAll('\0', '').toWellFormed()))
 }
