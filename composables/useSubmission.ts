@@ -37,5 +37,13 @@ export function useSubmission(id: string) {
     await refresh()
   }
 
-  return { submission, failure, loading, refresh, outbox, here, stillHere, stillWanted, ask, asking, askFailure, following }
+  const saying = ref(false)
+  async function sayAcidCleaned(acidCleaned: boolean) {
+    saying.value = true
+    await api.post(`/api/heads/${submission.value?.head.id}/acid-cleaned`, { acidCleaned }, crypto.randomUUID())
+    await refresh()
+    saying.value = false
+  }
+
+  return { saying, sayAcidCleaned, submission, failure, loading, refresh, outbox, here, stillHere, stillWanted, ask, asking, askFailure, following }
 }

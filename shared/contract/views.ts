@@ -64,6 +64,8 @@ export interface SubmissionView {
   note: string
   askedAt: string | null
   ports: { cylinder: number, side: Side }[]
+  /** Whether the core came from acid cleaning; null until somebody says. */
+  acidCleaned: boolean | null
   photos: PhotoView[]
   readings: ReadingView[]
   sheets: SheetView[]

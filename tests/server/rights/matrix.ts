@@ -58,6 +58,7 @@ export const matrix: readonly MatrixRow[] = [
   row('GET /api/heads/{id}/curves', seeHead, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}/curves` })),
   row('GET /api/bench', students, at('/api/bench')),
   row('POST /api/heads/{id}/stages/{op}/submissions', workOnHead, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}/stages/70/submissions`, body: {} })),
+  row('POST /api/heads/{id}/acid-cleaned', workOnHead, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}/acid-cleaned`, body: { acidCleaned: false } })),
   row('POST /api/heads/{id}/stop', { ...taught, safety: 'yes' }, async (world, owner) => ({ path: `/api/heads/${await world.head(owner)}/stop`, body: { where: 'bowl wall', reason: 'Look again.' } })),
   // The safety officer lifts what the safety officer stopped; this one is an instructor's.
   row('POST /api/stops/{id}/lift', { ...taught, safety: 404 }, async (world, owner) => ({ path: `/api/stops/${await world.stop(owner, world.school.hanne)}/lift`, body: { reason: 'Read again and held.' } })),
