@@ -5,7 +5,7 @@ import type { FoundSubmission } from '#server/services/submissions/find-submissi
 import type { App } from '#server/utils/app'
 import type { SheetInput } from '#shared/contract/inputs'
 import { readFlowSheet, type SheetHelp } from '#shared/domain/airflow/sheet/read-flow-sheet'
-import type { ColumnChoices, SheetReading, SheetTable } from '#shared/domain/airflow/sheet/sheet-reading'
+import type { SheetReading, SheetTable } from '#shared/domain/airflow/sheet/sheet-reading'
 import { baselineHeader } from './baseline-header'
 import { readerProfiles } from './bench-profile'
 import { columnChoices } from './column-choices'
@@ -13,13 +13,11 @@ import { keepable } from './keepable'
 import { needChoices } from './need-choices'
 import { schoolFindings } from './school-findings'
 import { sheetAnswers } from './sheet-answers'
+import { asChosen, sheetPreview } from './sheet-preview'
 import { sheetTables } from './sheet-tables'
 
 /** Name and version of the method that reads sheets. */
 export const sheetMethod = 'sheet reader 1'
-
-/** Rows and columns of the file that are kept to be shown beside the reading. */
-const shown = { rows: 20, columns: 64 }
 
 export type SheetAsRead = Pick<FlowSheetReading, 'kind' | 'bench' | 'header' | 'runs' | 'columns' | 'firstRows' | 'findings' | 'needs' | 'plateLog' | 'answers' | 'method'>
 
@@ -48,8 +46,7 @@ export async function readSheet(tx: EntityManager, app: App, submission: FoundSu
     bench: reading.header.bench?.slice(0, 60) ?? null,
     header: reading.header,
     runs: reading.runs,
-    columns: shownColumns(table, reading, columns),
-    firstRows: table.rows.slice(0, shown.rows).map(row => row.slice(0, shown.columns).map(cell => cell.slice(0, 200))),
+    ...sheetPreview(table, reading, columns),
     findings: [...reading.findings, ...findings].sort((a, b) => rank[a.severity] - rank[b.severity]),
     needs: needChoices(reading, card.cylinders, profiles.map(one => one.bench)),
     plateLog: reading.plateLog,
@@ -66,17 +63,6 @@ function firstRead(tables: readonly [SheetTable, ...SheetTable[]], help: SheetHe
   return all.find(({ reading }) => reading.runs.length > 0 || reading.plateLog !== null) ?? { table: tables[0], reading: readFlowSheet(tables[0], help) }
 }
 
-/** Every column of the file in its order, so that each stands over its cells; one nobody reads has no meaning. */
-function shownColumns(table: SheetTable, reading: SheetReading, choices: ColumnChoices): FlowSheetReading['columns'] {
-  const width = Math.min(shown.columns, Math.max(...table.rows.map(row => row.length)))
-  return Array.from({ length: width }, (_, index) => {
-    const column = reading.columns.find(one => one.index === index)
-    if (!column) return { heading: '', meaning: null, unit: null, from: '' }
-    const meaning = column.quantity === 'other' ? null : column.quantity
-    return { heading: column.heading, meaning, unit: column.unit, from: Object.hasOwn(choices, String(index)) ? 'choice' : column.unitFrom ?? '' }
-  })
-}
-
 function chosenBefore(before: FlowSheetReading | null): NonNullable<SheetInput['columns']> {
-  return (before?.columns ?? []).flatMap(({ from, meaning, unit }, index) => from === 'choice' ? [{ index, meaning: meaning ?? 'other', ...(unit === null ? {} : { unit }) }] : [])
+  return (before?.columns ?? []).flatMap(({ from, meaning, unit }, index) => from === asChosen ? [{ index, meaning: meaning ?? 'other', ...(unit === null ? {} : { unit }) }] : [])
 }

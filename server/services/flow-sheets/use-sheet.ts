@@ -1,10 +1,10 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { FlowSheetReading } from '#server/db/entities/FlowSheet'
-import { afterEvidence } from '#server/services/submissions/after-evidence'
 import type { Actor } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
 import { recordEvent } from '#server/utils/record-event'
 import { Refusal } from '#server/utils/refusal'
+import { signal } from '#server/utils/signals'
 import type { SheetView } from '#shared/contract/views'
 import { findSheet } from './find-sheet'
 import { viewSheet } from './view-sheet'
@@ -26,7 +26,8 @@ export async function useSheet(em: EntityManager, app: App, actor: Actor, id: st
       sheet.state = 'used'
       recordEvent(tx, { actor: actor.id, action: 'flow-sheet-confirmed', subject: `submission:${submission.id}`, detail: { sheet: id, reading: newest.id, version: newest.version } })
       await tx.flush()
-      await afterEvidence(tx, app, submission)
+      // It counted already: nothing the score rests on has changed.
+      await signal(tx, { kind: 'submission', id: submission.id })
     }
     return viewSheet(await tx.findOneOrFail(FlowSheetReading, newest.id, { populate: ['sheet.upload'] }))
   })

@@ -73,9 +73,14 @@ export async function gatherForPart(em: EntityManager, head: FoundHead, due: Pic
   }
 }
 
-/** The newest reading of every flow sheet of a head that is not raw nor set aside, oldest sheet first. */
+/**
+ * The newest reading of every flow sheet of a head that is not raw nor set aside, oldest sheet first. One file is one run however often
+ * it was sent to a stage: the newest of its sheets counts.
+ */
 export async function newestReadings(em: EntityManager, headId: string) {
-  const all = await em.find(FlowSheetReading, { sheet: { submission: { head: headId }, state: { $nin: ['raw', 'set-aside'] } } }, { populate: ['sheet.submission'], orderBy: { sheet: { addedAt: 'asc', id: 'asc' }, version: 'desc' } })
+  const all = await em.find(FlowSheetReading, { sheet: { submission: { head: headId }, state: { $nin: ['raw', 'set-aside'] } } }, { populate: ['sheet.submission', 'sheet.upload'], orderBy: { sheet: { addedAt: 'asc', id: 'asc' }, version: 'desc' } })
   const seen = new Set<string>()
-  return all.filter(one => !seen.has(one.sheet.id) && seen.add(one.sheet.id))
+  const newest = all.filter(one => !seen.has(one.sheet.id) && seen.add(one.sheet.id))
+  const fileOf = ({ sheet }: (typeof newest)[number]) => `${sheet.$.submission.$.op} ${sheet.$.upload.$.sha256}`
+  return newest.filter((one, at) => !newest.slice(at + 1).some(later => fileOf(later) === fileOf(one)))
 }
