@@ -1,12 +1,7 @@
+import { schoolTimeOf } from '#server/services/school/school-time-of'
 import type { App } from '#server/utils/app'
 
-/**
- * When evidence was taken, by the school's clock. A phone says so in real time, so its distance from now is what counts; a phone whose
- * clock runs ahead says now.
- */
+/** When a photo was taken, by the school's clock. A phone whose clock runs ahead says now: the picture is there, so it was taken. */
 export function takenWhen(app: Pick<App, 'clock'>, told: string | undefined): Date {
-  const now = app.clock.schoolNow()
-  if (!told) return now
-  const ago = app.clock.now().getTime() - Date.parse(told)
-  return new Date(now.getTime() - Math.max(0, ago))
+  return (told === undefined ? null : schoolTimeOf(app, told)) ?? app.clock.schoolNow()
 }

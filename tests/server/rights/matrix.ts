@@ -76,6 +76,10 @@ export const matrix: readonly MatrixRow[] = [
   row('POST /api/submissions/{id}/photos', workOnHead, async (world, owner, caller) => ({ path: `/api/submissions/${await world.draft(owner)}/photos`, body: { uploadId: await world.upload(caller, 'photo'), view: 'view-12', cylinder: 1, side: 'intake' } })),
   row('POST /api/submissions/{id}/documents', workOnHead, async (world, owner, caller) => ({ path: `/api/submissions/${await world.draft(owner)}/documents`, body: { uploadId: await world.upload(caller, 'document') } })),
   row('GET /api/documents/{id}/file', workOnHead, async (world, owner) => ({ path: `/api/documents/${await world.document(owner)}/file` })),
+  row('POST /api/submissions/{id}/readings', workOnHead, async (world, owner) => ({ path: `/api/submissions/${await world.draft(owner)}/readings`, body: { quantity: 'seat-land', cylinder: 1, side: 'intake', values: ['1.62'], unit: 'mm', instrument: 'loupe' } })),
+  row('POST /api/submissions/{id}/flow-sheets', workOnHead, async (world, owner, caller) => ({ path: `/api/submissions/${await world.draft(owner)}/flow-sheets`, body: { uploadId: await world.upload(caller, 'flow-sheet') } })),
+  row('POST /api/flow-sheets/{id}/use', workOnHead, async (world, owner) => ({ path: `/api/flow-sheets/${await world.sheet(owner)}/use`, body: {} })),
+  row('POST /api/flow-sheets/{id}/set-aside', workOnHead, async (world, owner) => ({ path: `/api/flow-sheets/${await world.sheet(owner)}/set-aside`, body: {} })),
   // The safety officer sees view-13 only; this is a seat close-up.
   row('GET /api/photos/{id}/image', { ...workOnHead, safety: 404 }, async (world, owner) => ({ path: `/api/photos/${await world.photo(owner)}/image` })),
   row('POST /api/photos/{id}/set-aside', workOnHead, async (world, owner) => ({ path: `/api/photos/${await world.photo(owner)}/set-aside`, body: {} })),

@@ -10,6 +10,7 @@ import { Photo } from '#server/db/entities/Photo'
 import { Upload, type UploadPurpose } from '#server/db/entities/Upload'
 import { User } from '#server/db/entities/User'
 import { addDocument } from '#server/services/documents/add-document'
+import { addFlowSheet } from '#server/services/flow-sheets/add-flow-sheet'
 import type { Actor } from '#server/utils/actor'
 import type { SubmissionPart } from '#shared/domain/rubric/evidence'
 import type { Harness } from '../harness'
@@ -32,6 +33,8 @@ export interface World {
   photo: (owner: Actor, view?: string) => Promise<string>
   /** A received upload of this person. */
   upload: (owner: Actor, purpose: UploadPurpose) => Promise<string>
+  /** A flow sheet of a fresh draft, read. */
+  sheet: (owner: Actor) => Promise<string>
   /** A document of a fresh draft. */
   document: (owner: Actor) => Promise<string>
   stop: (owner: Actor, by: Actor) => Promise<string>
@@ -113,6 +116,11 @@ export async function makeWorld(harness: Harness, school: TestSchool): Promise<W
         tx.persist(made)
         return made.id
       })
+    },
+    async sheet(owner) {
+      const submissionId = await draft(owner)
+      const { sheet } = await addFlowSheet(school.em(), harness.app, owner, submissionId, { uploadId: await upload(owner, 'flow-sheet') })
+      return sheet.id
     },
     async document(owner) {
       const submissionId = await draft(owner)
