@@ -34,8 +34,10 @@ export function useReview(id: string) {
   /** The submission moved while it was being looked at: offered, never forced under the reviewer's hands. */
   const moved = ref(false)
   useFollow(followed, computed(() => followed.value !== null), async () => {
+    // The reviewer's own decision moves it too.
+    if (sending.value || done.value) return
     const answer = await api.get<{ version: number, state: string }>(`/api/submissions/${id}`)
-    if (answer.ok && sheet.value && (answer.value.version !== sheet.value.submission.version || answer.value.state !== sheet.value.submission.state)) moved.value = true
+    if (answer.ok && sheet.value && !sending.value && !done.value && (answer.value.version !== sheet.value.submission.version || answer.value.state !== sheet.value.submission.state)) moved.value = true
   })
   async function look() {
     await refresh()

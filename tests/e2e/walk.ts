@@ -1,14 +1,24 @@
-import { test as base, expect, type Page } from '@playwright/test'
+import { test as base, expect, type BrowserContext, type Page } from '@playwright/test'
 import { startSchool, type School } from './start-school'
 
 type Options = {
   /** `test.use({ until: '2026-03-25T08:00:00Z' })` at the top of a file: where the story stands when its tests begin. */
   until: string | null
+  /** A school of its own for this file, where another file stands at the same instant: one word of its own. */
+  story: string
 }
+type Size = 'phone' | 'desktop'
 type Fixtures = {
+  /** Another person's browser, beside `page`: their own cookies and storage, watched in the same way. */
+  another: (size: Size) => Promise<Page>
   /** Lines the browser may say on its console in this test; any other warning or error fails it. */
   consoleMaySay: RegExp[]
-  quiet: undefined
+  quiet: { watch: (context: BrowserContext) => void }
+}
+
+const sizes = {
+  phone: { viewport: { width: 390, height: 844 }, hasTouch: true, isMobile: true, deviceScaleFactor: 2 },
+  desktop: { viewport: { width: 1320, height: 900 } },
 }
 
 /**
@@ -17,7 +27,8 @@ type Fixtures = {
  */
 export const test = base.extend<Fixtures, Options & { school: School }>({
   until: [null, { option: true, scope: 'worker' }],
-  school: [async ({ until }, use, worker) => {
+  story: ['', { option: true, scope: 'worker' }],
+  school: [async ({ until, story: _other }, use, worker) => {
     const school = await startSchool(`${worker.project.name}_${worker.workerIndex}`, until)
     await use(school)
     await school.stop()
@@ -27,21 +38,35 @@ export const test = base.extend<Fixtures, Options & { school: School }>({
   quiet: [async ({ context, consoleMaySay }, use) => {
     const complaints: string[] = []
     const outside: string[] = []
-    context.on('console', (message) => {
-      if (['error', 'warning'].includes(message.type()) && !consoleMaySay.some(allowed => allowed.test(message.text()))) complaints.push(message.text())
-    })
-    context.on('weberror', error => complaints.push(String(error.error())))
-    context.on('request', (request) => {
-      const { protocol, hostname } = new URL(request.url())
-      if (/^(https?|wss?):$/.test(protocol) && hostname !== '127.0.0.1') outside.push(request.url())
-    })
-    await use(undefined)
+    const watch = (watched: BrowserContext) => {
+      watched.on('console', (message) => {
+        if (['error', 'warning'].includes(message.type()) && !consoleMaySay.some(allowed => allowed.test(message.text()))) complaints.push(message.text())
+      })
+      watched.on('weberror', error => complaints.push(String(error.error())))
+      watched.on('request', (request) => {
+        const { protocol, hostname } = new URL(request.url())
+        if (/^(https?|wss?):$/.test(protocol) && hostname !== '127.0.0.1') outside.push(request.url())
+      })
+    }
+    watch(context)
+    await use({ watch })
     expect(outside, 'requests to somebody outside this machine').toEqual([])
     expect(complaints, 'complaints on the browser\'s console').toEqual([])
   }, { auto: true }],
+  another: async ({ browser, school, quiet }, use) => {
+    const contexts: BrowserContext[] = []
+    await use(async (size) => {
+      const context = await browser.newContext({ ...sizes[size], baseURL: school.url, locale: 'en-GB' })
+      contexts.push(context)
+      quiet.watch(context)
+      return context.newPage()
+    })
+    for (const context of contexts) await context.close()
+  },
 })
 
 export { expect }
+export type { School }
 
 /** A page that has taken over from the server's HTML; a press before that may be lost. */
 export async function ready(page: Page): Promise<void> {
