@@ -2,6 +2,7 @@ import { randomBytes, randomUUID } from 'node:crypto'
 import sharp from 'sharp'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { Upload } from '#server/db/entities/Upload'
+import { takeUpload } from '#server/services/uploads/take-upload'
 import { clearUploads } from '#server/services/uploads/clear-uploads'
 import { openHarness, type Harness } from '../harness'
 import { serveApi, type Api, type Caller } from '../http'
@@ -142,4 +143,17 @@ it('clears what nobody finished in a day and nobody used in thirty', async () =>
   expect(await school.em().count(Upload, { id: { $in: [unused, unfinished.id] } })).toBe(0)
   expect(await harness.app.storage.head(key)).toBeNull()
   expect(await school.em().count(Upload, { id: fresh })).toBe(1)
+})
+
+it('leaves a file alone that is being used at this moment, thirty days on', async () => {
+  const { id } = await sendFile(imre, await jpeg(35))
+  await school.em().nativeUpdate(Upload, { id }, { createdAt: new Date(Date.now() - 31 * 24 * 3600_000) })
+  const { key } = await school.em().findOneOrFail(Upload, id)
+  await school.em().transactional(async (tx) => {
+    await takeUpload(tx, school.imre, id, 'photo', 'photo:a')
+    await tx.flush()
+    await clearUploads(harness.app)
+  })
+  expect((await school.em().findOneOrFail(Upload, id)).state).toBe('used')
+  expect(await harness.app.storage.head(key)).not.toBeNull()
 })
