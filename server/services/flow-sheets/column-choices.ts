@@ -34,6 +34,20 @@ export function columnChoices(chosen: NonNullable<SheetInput['columns']>): Colum
   return choices
 }
 
+/**
+ * Columns as a person types them into the reader's question, counted from 1: "1 lift mm, 3 flow cfm".
+ *
+ * @throws {Refusal} input_invalid for what cannot be read so
+ */
+export function typedColumns(text: string): NonNullable<SheetInput['columns']> {
+  return text.split(/[,;\n]/).filter(part => part.trim() !== '').map((part) => {
+    const [, number, meaning = '', unit] = /^\s*(?:column\s+)?(\d{1,2})\W+([a-z]+)(?:\s+(\S.*?))?\s*$/i.exec(part) ?? []
+    const message = `"${part.trim()}" does not name a column. Count from 1 and say what it is and in what unit: 1 lift mm, 2 flow cfm.`
+    if (!number || Number(number) === 0) throw new Refusal('input_invalid', message, { issues: [{ path: 'answers.columns', code: 'column-unreadable', message }] })
+    return { index: Number(number) - 1, meaning: meaning.toLowerCase(), ...(unit === undefined ? {} : { unit }) }
+  })
+}
+
 /** A unit as people write it, of a kind the quantity can be in (of any kind without one); null when it is none. */
 export function sheetUnit(text: string, quantity?: ColumnQuantity): SheetUnit | null {
   const kinds = quantity === undefined ? [...new Set(Object.values(unitKinds).flat())] : unitKinds[quantity] ?? []

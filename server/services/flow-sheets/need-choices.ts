@@ -16,6 +16,7 @@ export function needChoices({ needs, findings }: Pick<SheetReading, 'needs' | 'f
         const dates = findings.filter(one => one.code === 'ambiguous-date').flatMap(one => one.text.match(/\d{4}-\d{2}-\d{2}/g) ?? [])
         return dates.length === 2 ? { ...need, choices: dates } : need
       }
+      case 'columns': return { ...need, question: `${need.question} Count from 1: 1 lift mm, 2 flow cfm.` }
       default: return need
     }
   })

@@ -8,7 +8,7 @@ import { readFlowSheet, type SheetHelp } from '#shared/domain/airflow/sheet/read
 import type { SheetReading, SheetTable } from '#shared/domain/airflow/sheet/sheet-reading'
 import { baselineHeader } from './baseline-header'
 import { readerProfiles } from './bench-profile'
-import { columnChoices } from './column-choices'
+import { columnChoices, typedColumns } from './column-choices'
 import { keepable } from './keepable'
 import { needChoices } from './need-choices'
 import { schoolFindings } from './school-findings'
@@ -32,7 +32,7 @@ export async function readSheet(tx: EntityManager, app: App, submission: FoundSu
   const head = submission.head.$
   const { card } = head.casting.$
   const answers = sheetAnswers(before?.answers ?? {}, input, card.cylinders)
-  const columns = columnChoices(input.columns ?? chosenBefore(before))
+  const columns = columnChoices([...typedColumns(answers.columns ?? ''), ...input.columns ?? chosenBefore(before)])
   const profiles = readerProfiles()
   const profile = profiles.find(one => one.bench.toLowerCase() === answers.bench?.trim().toLowerCase()) ?? null
   const help: SheetHelp = { profile, profiles, answers, columns, casting: card }

@@ -1,7 +1,7 @@
 import { type Heading, isUnitCell, readHeading } from './heading-words'
 import { plainText } from './plain-text'
 import { readCell } from './read-cell'
-import type { SheetTable } from './sheet-reading'
+import type { ColumnChoices, SheetTable } from './sheet-reading'
 
 /** The table of a sheet: what each column's heading says, and which rows are numbers. */
 export interface FoundTable {
@@ -21,15 +21,19 @@ export interface FoundTable {
  * A label in an upper row spans the columns up to the next label. A row of units below belongs to the headings. The table ends
  * where its numbers do; the same headings again, or a line that names a run or cylinder, starts the next block. Rows of totals and
  * means are left out. A table laid on its side (lifts along a row) is turned first.
- * Null when no table is found.
+ * What a person chose for a column goes before its heading. Null when no table is found.
  */
-export function findTable(table: SheetTable, decimal: '.' | ',' | undefined, profileHeading?: (text: string) => Heading | null): FoundTable | null {
+export function findTable(table: SheetTable, decimal: '.' | ',' | undefined, profileHeading?: (text: string) => Heading | null, choices: ColumnChoices = {}): FoundTable | null {
   const rows = table.rows.map(row => row.map(plainText))
-  const meaning = (text: string) => profileHeading?.(text) ?? readHeading(text)
+  const meaning: Meaning = (text, index) => {
+    const read = profileHeading?.(text) ?? readHeading(text)
+    const quantity = choices[String(index)]?.quantity
+    return quantity === undefined || quantity === read?.quantity ? read : { ...nothingMore, quantity }
+  }
   const start = findHeadings(rows, decimal, meaning)
   if (!start) {
     const turned = turnTable(rows, decimal)
-    return turned ? findTable({ rows: turned }, decimal, profileHeading) : null
+    return turned ? findTable({ rows: turned }, decimal, profileHeading, choices) : null
   }
   const { headings, meanings, first, after, kind } = start
   const key = meanings.findIndex(one => one?.quantity === (kind === 'flow' ? 'lift' : 'date'))
@@ -78,7 +82,11 @@ export function findTable(table: SheetTable, decimal: '.' | ',' | undefined, pro
   return found.rows.length > 0 ? found : null
 }
 
-type Meaning = (text: string) => Heading | null
+type Meaning = (text: string, index: number) => Heading | null
+
+/** What a heading says that says nothing but its quantity. */
+const nothingMore: Omit<Heading, 'quantity'> = { unit: null, run: null, cylinder: null, side: null, statistic: null, basis: null, densityDone: false, pressure: null }
+
 interface Headings { headings: string[], meanings: (Heading | null)[], first: number, after: number, kind: FoundTable['kind'] }
 
 function findHeadings(rows: string[][], decimal: '.' | ',' | undefined, meaning: Meaning): Headings | null {

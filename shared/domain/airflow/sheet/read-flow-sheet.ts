@@ -47,7 +47,7 @@ export function readFlowSheet(given: SheetTable, help: SheetHelp = {}): SheetRea
   const guessed = findDecimalSign(table)
   const profile = help.profile ?? profileOfBench(table, guessed, help.profiles ?? [])
   const decimal = guessed ?? profile?.decimal
-  const found = findTable(table, decimal, profile ? heading => profileMeaning(profile, heading) : undefined)
+  const found = findTable(table, decimal, profile ? heading => profileMeaning(profile, heading) : undefined, help.columns)
   const raw = readHeader((found ? found.rest : table.rows).slice(0, limits.headerRows), decimal)
   if (raw.bench === null && profile) raw.bench = profile.bench
   const answers = help.answers ?? {}
