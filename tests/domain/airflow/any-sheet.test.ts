@@ -235,7 +235,7 @@ describe('anything at all', () => {
       expect(reading.runs.every(run => run.points.every(point => point.liftMm > 0 && point.cfm28 > 0))).toBe(true)
       expect(reading.findings.every(finding => !/NaN|undefined|Infinity|\bnull\b/.test(finding.text.replace(/"[^"]*"/g, '')))).toBe(true)
     }
-  })
+  }, 30_000)
   it('is not held up by a long file', () => {
     const long = `${rest}Test pressure,28 inH2O\n\nLift mm,Flow cfm\n${Array.from({ length: 6000 }, (_, i) => `${(i / 100).toFixed(2)},${(20 + i / 50).toFixed(1)}`).join('\n')}\n`
     const start = performance.now()
