@@ -1,0 +1,37 @@
+import type { MikroORM } from '@mikro-orm/postgresql'
+import type { Storage } from '#server/adapters/storage/storage'
+import { SchoolSetting } from '#server/db/entities/SchoolSetting'
+import { User } from '#server/db/entities/User'
+import { DemoSeeder } from '#server/db/seeders/DemoSeeder'
+import { readContent } from '#server/db/seeders/content'
+import { sealAudit } from '#server/services/audit/seal-audit'
+import type { Config } from '#server/utils/config'
+import { hashPassword } from '#server/utils/passwords'
+import { paperHeads } from './paper-heads'
+import { playPaper } from './play-paper'
+import { storyPictures } from './pictures'
+import { loadActors, play } from './play'
+import { story } from './story'
+import { openStoryApp } from './story-app'
+
+export type Seeded = 'seeded' | 'already seeded' | 'other people'
+
+/**
+ * Fills an empty, migrated database with the demo school as it stands at an instant, and storage with its evidence. A database with
+ * people in it is left alone, whoever they are.
+ */
+export async function seedSchool(given: { orm: MikroORM, config: Config, storage: Storage, until: Date }): Promise<Seeded> {
+  const { orm, config, storage, until } = given
+  const em = orm.em.fork()
+  if (await em.count(User) > 0) return await em.count(SchoolSetting, { name: 'demo-clock' }) > 0 ? 'already seeded' : 'other people'
+  const { password } = readContent().start
+  await new DemoSeeder().run(em, { until, passwordHash: await hashPassword(password), seededAt: new Date() })
+  const opened = await openStoryApp(config, { orm, storage })
+  const player = { story: opened, pictures: storyPictures(opened.app), actors: await loadActors(orm.em.fork()) }
+  await playPaper(player, paperHeads, until)
+  await play(player, story, until)
+  await sealAudit(orm.em.fork(), 'minute')
+  // The school's clock starts when the story has been told, not when its telling began.
+  await orm.em.fork().nativeUpdate(SchoolSetting, { name: 'demo-clock' }, { value: { demoNow: until.toISOString(), seededAt: new Date().toISOString() } })
+  return 'seeded'
+}
