@@ -3,6 +3,7 @@ import { Photo } from '#server/db/entities/Photo'
 import { ScaleCard } from '#server/db/entities/ScaleCard'
 import type { Upload } from '#server/db/entities/Upload'
 import { User } from '#server/db/entities/User'
+import { whenTaken } from '#server/services/school/when-taken'
 import { afterEvidence } from '#server/services/submissions/after-evidence'
 import type { FoundSubmission } from '#server/services/submissions/find-submission'
 import { openForEvidence } from '#server/services/submissions/open-for-evidence'
@@ -15,14 +16,13 @@ import { Refusal } from '#server/utils/refusal'
 import type { PhotoInput } from '#shared/contract/inputs'
 import type { PhotoView } from '#shared/contract/views'
 import { viewNames } from '#shared/domain/rubric/words'
-import { takenWhen } from './taken-when'
 import { viewPhoto } from './view-photo'
 
 /**
  * Files a photo as evidence. Its header is read before anything is decoded; the pictures people see are made by a job.
  *
  * @throws {Refusal} whatever `openForEvidence` and `takeUpload` refuse, view_unknown, port_not_on_head, card_not_found,
- *   photo_seen_before, picture_unreadable, picture_too_large, upload_wrong_type
+ *   photo_seen_before, taken_in_future, picture_unreadable, picture_too_large, upload_wrong_type
  */
 export async function addPhoto(em: EntityManager, app: App, actor: Actor, submissionId: string, input: PhotoInput): Promise<PhotoView> {
   return em.transactional(async (tx) => {
@@ -40,7 +40,7 @@ export async function addPhoto(em: EntityManager, app: App, actor: Actor, submis
     const photo = tx.create(Photo, {
       id, submission, upload, view: input.view, cylinder: input.cylinder, side: input.side, spot: input.spot ?? null, card,
       seatDepth: input.seatDepth ?? null, clockMark: input.clockMark ?? null, width: facts.widthPx, height: facts.heightPx,
-      addedBy: tx.getReference(User, actor.id), takenAt: takenWhen(app, input.takenAt),
+      addedBy: tx.getReference(User, actor.id), takenAt: whenTaken(app, input.takenAt),
     })
     tx.persist(photo)
     recordEvent(tx, { actor: actor.id, action: 'photo-added', subject: `submission:${submission.id}`, detail: { photo: id, view: input.view, cylinder: input.cylinder, side: input.side, sha256: upload.sha256 } })

@@ -17,7 +17,7 @@ import { checkPortOfReading } from './port-of-reading'
 import { quantityOfReading } from './quantity-of-reading'
 import { refuseImplausible } from './refuse-implausible'
 import { viewReading } from './view-reading'
-import { whenRead } from './when-read'
+import { whenTaken } from '#server/services/school/when-taken'
 
 /**
  * Keeps readings of one quantity at one spot: the figures as typed, and beside them what they are in the quantity's base unit with the
@@ -46,7 +46,7 @@ export async function recordReading(em: EntityManager, app: App, actor: Actor, s
     const reading = tx.create(Reading, {
       submission, quantity: quantity.name, cylinder: input.cylinder, side: input.side, at: spot === null ? null : { ...input.at, spot }, when: input.when ?? null,
       asTyped: input.values, unit: unitName(input.unit), values: typed.values, baseUnit: quantity.is.baseUnit, instrument, expandedU: doubtOfReading(instrument, typed.values, quantity.is.baseUnit),
-      addedBy: tx.getReference(User, actor.id), takenAt: whenRead(app, input.takenAt), recordedAt: app.clock.schoolNow(), voids: input.voids ?? null, voidedAt: null,
+      addedBy: tx.getReference(User, actor.id), takenAt: whenTaken(app, input.takenAt), recordedAt: app.clock.schoolNow(), voids: input.voids ?? null, voidedAt: null,
     })
     if (input.voids !== undefined) await voidReading(tx, submission.id, input.voids, reading.recordedAt)
     tx.persist(reading)

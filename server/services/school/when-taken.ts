@@ -1,9 +1,9 @@
-import { schoolTimeOf } from '#server/services/school/school-time-of'
+import { schoolTimeOf } from './school-time-of'
 import type { App } from '#server/utils/app'
 import { Refusal } from '#server/utils/refusal'
 
-/** When a reading was taken, by the school's clock. @throws {Refusal} taken_in_future */
-export function whenRead(app: Pick<App, 'clock'>, told: string | undefined): Date {
+/** When evidence was taken, by the school's clock. @throws {Refusal} taken_in_future */
+export function whenTaken(app: Pick<App, 'clock'>, told: string | undefined): Date {
   if (told === undefined) return app.clock.schoolNow()
   const at = schoolTimeOf(app, told)
   if (at === null) throw new Refusal('taken_in_future')
