@@ -59,10 +59,8 @@ export async function play(player: Player, heads: readonly StoryHead[], until: D
   steps.sort((a, b) => a.at.getTime() - b.at.getTime())
   for (const step of steps) {
     player.story.standAt(step.at)
-    const T0 = performance.now()
     try {
       await step.run()
-      if (process.env.SEED_TIMES) console.log((performance.now() - T0).toFixed(0).padStart(6), step.what)
     }
     catch (thrown) {
       const more = thrown instanceof Refusal ? ` ${JSON.stringify(thrown.extra)}` : ''

@@ -13,15 +13,18 @@ import { storyPictures } from './pictures'
 import { loadActors, play } from './play'
 import { story } from './story'
 import { openStoryApp } from './story-app'
+import type { StoryHead } from './story-parts'
 
 export type Seeded = 'seeded' | 'already seeded' | 'other people'
 
 /**
  * Fills an empty, migrated database with the demo school as it stands at an instant, and storage with its evidence. A database with
  * people in it is left alone, whoever they are.
+ *
+ * @param given.heads whose stories are told; everybody's when left out
  */
-export async function seedSchool(given: { orm: MikroORM, config: Config, storage: Storage, until: Date }): Promise<Seeded> {
-  const { orm, config, storage, until } = given
+export async function seedSchool(given: { orm: MikroORM, config: Config, storage: Storage, until: Date, heads?: readonly StoryHead[] }): Promise<Seeded> {
+  const { orm, config, storage, until, heads = story } = given
   const em = orm.em.fork()
   if (await em.count(User) > 0) return await em.count(SchoolSetting, { name: 'demo-clock' }) > 0 ? 'already seeded' : 'other people'
   const { password } = readContent().start
@@ -29,7 +32,7 @@ export async function seedSchool(given: { orm: MikroORM, config: Config, storage
   const opened = await openStoryApp(config, { orm, storage })
   const player = { story: opened, pictures: storyPictures(opened.app), actors: await loadActors(orm.em.fork()) }
   await playPaper(player, paperHeads, until)
-  await play(player, story, until)
+  await play(player, heads, until)
   await sealAudit(orm.em.fork(), 'minute')
   // The school's clock starts when the story has been told, not when its telling began.
   await orm.em.fork().nativeUpdate(SchoolSetting, { name: 'demo-clock' }, { value: { demoNow: until.toISOString(), seededAt: new Date().toISOString() } })
