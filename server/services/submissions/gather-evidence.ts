@@ -1,8 +1,7 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { EvidenceDocument } from '#server/db/entities/EvidenceDocument'
 import { FlowSheetReading } from '#server/db/entities/FlowSheet'
-import { Photo } from '#server/db/entities/Photo'
-import { Reading } from '#server/db/entities/Reading'
+import type { ReadingAt } from '#server/db/entities/Reading'
 import { Override } from '#server/db/entities/Review'
 import type { ScoreSet } from '#server/db/entities/ScoreSet'
 import type { FoundHead } from '#server/services/heads/find-head'
@@ -31,10 +30,9 @@ export interface Gathered { evidence: EvidenceSet, restsOn: ScoreSet['restsOn'] 
 
 /** The same for a part of a stage that nobody began yet (`submissionId` null). */
 export async function gatherForPart(em: EntityManager, head: FoundHead, due: Pick<EvidenceSet, 'op' | 'part' | 'ports'>, submissionId: string | null): Promise<Gathered> {
-  const ofHead = { submission: { head: head.id } }
-  const readings = await em.find(Reading, { ...ofHead, voidedAt: null }, { populate: ['submission', 'instrument'], orderBy: { takenAt: 'asc', id: 'asc' } })
-  const photos = await em.find(Photo, { ...ofHead, setAsideAt: null, state: { $ne: 'cannot-use' } }, { populate: ['submission'], orderBy: { takenAt: 'asc', id: 'asc' } })
-  const documents = await em.find(EvidenceDocument, { ...ofHead, setAsideAt: null }, { populate: ['submission'], orderBy: { addedAt: 'asc', id: 'asc' } })
+  const readings = await readingsOfHead(em, head.id)
+  const photos = await photosOfHead(em, head.id)
+  const documents = await em.find(EvidenceDocument, { submission: { head: head.id }, setAsideAt: null }, { populate: ['submission'], orderBy: { addedAt: 'asc', id: 'asc' } })
   const sheets = await newestReadings(em, head.id)
   const overrides = submissionId === null ? [] : await em.find(Override, { result: { set: { submission: submissionId } } }, { populate: ['result'], orderBy: { at: 'desc' } })
   const judged = new Map<string, EvidenceSet['judged'][number]>()
@@ -50,11 +48,8 @@ export async function gatherForPart(em: EntityManager, head: FoundHead, due: Pic
       op: due.op,
       part: due.part,
       ports: due.ports,
-      readings: readings.map(one => ({
-        id: one.id, quantity: one.quantity, op: one.submission.$.op, cylinder: one.cylinder ?? null, side: one.side ?? null, spot: spotOf(one.at ?? {}), when: one.when ?? null,
-        values: one.values, unit: one.baseUnit, instrument: one.instrument.$.code, expandedU: one.expandedU, takenAt: one.takenAt.getTime(),
-      })),
-      photos: photos.map(one => ({ id: one.id, view: one.view, op: one.submission.$.op, cylinder: one.cylinder ?? null, side: one.side ?? null, spot: one.spot ?? null, takenAt: one.takenAt.getTime() })),
+      readings: readings.map(({ at, ...one }) => ({ ...one, spot: spotOf(at ?? {}) })),
+      photos,
       documents: documents.map(one => ({ id: one.id, op: one.submission.$.op, note: one.note })),
       sheets: sheets.map(one => ({ id: one.sheet.id, op: one.sheet.$.submission.$.op, header: one.header, runs: one.runs, takenAt: one.sheet.$.addedAt.getTime() })),
       judged: [...judged.values()],
@@ -72,6 +67,32 @@ export async function gatherForPart(em: EntityManager, head: FoundHead, due: Pic
     },
   }
 }
+
+type ReadingRow = Omit<EvidenceSet['readings'][number], 'spot'> & { at: ReadingAt | null }
+
+/**
+ * Readings that stand, oldest first. Plain rows: a head has a thousand of them before long, and made into entities, each with its
+ * submission, they take longer than everything else of a judgement together.
+ */
+function readingsOfHead(em: EntityManager, headId: string): Promise<ReadingRow[]> {
+  return em.getConnection().execute<ReadingRow[]>(`
+    select r.id, r.quantity, s.op, r.cylinder, r.side, r.at, r."when", r."values", r.base_unit as unit, i.code as instrument, r.expanded_u as "expandedU", ${milliseconds('r.taken_at')} as "takenAt"
+    from reading r join submission s on s.id = r.submission_id join instrument i on i.id = r.instrument_id
+    where s.head_id = ? and r.voided_at is null
+    order by r.taken_at, r.id`, [headId], 'all', em.getTransactionContext())
+}
+
+/** Photos that count, oldest first. */
+function photosOfHead(em: EntityManager, headId: string): Promise<EvidenceSet['photos']> {
+  return em.getConnection().execute<EvidenceSet['photos']>(`
+    select p.id, p.view, s.op, p.cylinder, p.side, p.spot, ${milliseconds('p.taken_at')} as "takenAt"
+    from photo p join submission s on s.id = p.submission_id
+    where s.head_id = ? and p.set_aside_at is null and p.state <> 'cannot-use'
+    order by p.taken_at, p.id`, [headId], 'all', em.getTransactionContext())
+}
+
+/** The driver gives instants as text and whole numbers of eight bytes too. */
+const milliseconds = (column: string): string => `(extract(epoch from ${column}) * 1000)::double precision`
 
 /**
  * The newest reading of every flow sheet of a head that is not raw nor set aside, oldest sheet first. One file is one run however often
