@@ -14,8 +14,8 @@ export const PointRelease = defineEntity({
     review: () => p.oneToOne(Review).ref().owner().unique(),
     by: () => p.manyToOne(User).ref(),
     at: instant(),
-    /** Evidence rows and versions the release rests on. */
-    restsOn: p.json<unknown>(),
+    /** Evidence rows and versions the release rests on: thousands of ids by the end of a course, so they are loaded only when asked for. */
+    restsOn: p.json<unknown>().lazy(true, false),
     /** Conditions the program added ("no more cutting at ..."), with the criterion that a newer accept ends. */
     conditions: p.json<{ criterion: string, cylinder: number | null, side: string | null, at: string | null, text: string }[]>(),
     /** Condition in the instructor's own words. */

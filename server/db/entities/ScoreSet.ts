@@ -11,8 +11,8 @@ export const ScoreSet = defineEntity({
     version: p.integer(),
     score: real().nullable(),
     word: p.string().length(20),
-    /** Evidence rows it rests on, with the rubric, casting and method versions. */
-    restsOn: p.json<{ rubric: number, casting: string, method: string, readings: string[], photos: string[], documents: string[], sheets: string[] }>(),
+    /** Evidence rows it rests on, with the rubric, casting and method versions. Loaded only when asked for. */
+    restsOn: p.json<{ rubric: number, casting: string, method: string, readings: string[], photos: string[], documents: string[], sheets: string[] }>().lazy(true, false),
     scoredAt: instant(),
   },
   uniques: [{ properties: ['submission', 'version'] }],

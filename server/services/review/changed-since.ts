@@ -10,7 +10,7 @@ import { resultSpot } from './result-spot'
 
 /** What came into a submission since the version somebody looked at, in words; what that version rested on is kept with its results. */
 export async function changedSince(em: EntityManager, submission: Submission, seenVersion: number): Promise<string[]> {
-  const seen = await em.findOne(ScoreSet, { submission: submission.id, version: seenVersion })
+  const seen = await em.findOne(ScoreSet, { submission: submission.id, version: seenVersion }, { populate: ['restsOn'] })
   const known = new Set(seen ? [...seen.restsOn.readings, ...seen.restsOn.photos, ...seen.restsOn.documents, ...seen.restsOn.sheets] : [])
   const isNew = (row: { id: string }): boolean => !known.has(row.id)
   const [readings, photos, sheets, documents] = [

@@ -59,7 +59,7 @@ function titleOf({ criteria }: PointCase, id: string): string {
 }
 
 async function restsOnOf(tx: EntityManager, { rows }: PointCase): Promise<RestsOn> {
-  const sets = await tx.find(ScoreSet, { id: { $in: [...new Set(rows.map(row => row.result.set.id))] } }, { orderBy: { scoredAt: 'asc' } })
+  const sets = await tx.find(ScoreSet, { id: { $in: [...new Set(rows.map(row => row.result.set.id))] } }, { populate: ['restsOn'], orderBy: { scoredAt: 'asc' } })
   return sets.map(set => ({ submission: set.submission.id, version: set.version, ...set.restsOn }))
 }
 

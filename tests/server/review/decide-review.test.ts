@@ -44,7 +44,7 @@ it('releases a point whose criteria are all accepted: release, decision, message
 
   const em = school.em()
   expect(await em.findOneOrFail(Submission, id)).toMatchObject({ state: 'decided', decision: 'release' })
-  const [given] = await em.find(PointRelease, {})
+  const [given] = await em.find(PointRelease, {}, { populate: ['restsOn'] })
   expect(given).toMatchObject({ point: 'hold-4', by: { id: school.hanne.id }, restsOn: [{ submission: id, version: 1, rubric: 1 }] })
   expect(await em.findOneOrFail(Photo, photo)).toMatchObject({ state: 'reviewed' })
   expect(await em.find(PhotoPin, {})).toMatchObject([{ number: 1, x: 0.25, y: 0.5, criterion: 'W-01' }])

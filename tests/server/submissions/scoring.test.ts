@@ -41,7 +41,7 @@ async function lands(values: number[]): Promise<void> {
 const ask = () => imre.post(`/api/submissions/${id}/ask`)
 const score = () => scoreSubmission(harness.app, id)
 const view = async () => (await imre.get<SubmissionView>(`/api/submissions/${id}`)).body
-const sets = () => school.em().find(ScoreSet, { submission: id }, { orderBy: { version: 'asc' } })
+const sets = () => school.em().find(ScoreSet, { submission: id }, { populate: ['restsOn'], orderBy: { version: 'asc' } })
 
 it('writes every criterion of the part into one result set that says what it rests on', async () => {
   const reading = await read(harness, school, id, { quantity: 'seat-land', values: [1.1], cylinder: 1, side: 'intake', spot: '12' })
