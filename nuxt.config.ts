@@ -5,7 +5,6 @@ export default defineNuxtConfig({
     '@pinia/nuxt',
     '@vueuse/nuxt',
     '@sidebase/nuxt-auth',
-    '@nuxt/icon',
     'nuxt-security',
   ],
   // Our own code is imported by name, so that a linter sees every import.
@@ -42,7 +41,11 @@ export default defineNuxtConfig({
     storageAccessKey: '',
     storageSecretKey: '',
   },
-  experimental: { typedPages: true },
+  experimental: {
+    typedPages: true,
+    // A link brings the page behind it when a finger or pointer comes to it, not when it is merely seen: a first visit stays small.
+    defaults: { nuxtLink: { prefetchOn: { visibility: false, interaction: true } } },
+  },
   compatibilityDate: '2026-01-01',
   nitro: {
     imports: false as never,
@@ -65,12 +68,6 @@ export default defineNuxtConfig({
     originEnvKey: 'AUTH_ORIGIN',
     provider: { type: 'authjs', trustHost: false, defaultProvider: 'credentials', addDefaultCallbackUrl: true },
     globalAppMiddleware: false,
-  },
-  icon: {
-    provider: 'none',
-    fallbackToApi: false,
-    serverBundle: { collections: ['lucide'] },
-    clientBundle: { scan: true, sizeLimitKb: 64 },
   },
   security: {
     headers: {
