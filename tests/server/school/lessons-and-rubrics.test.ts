@@ -117,6 +117,7 @@ it('saves the next version beside the one before, for one of two who began from 
   const wider = changed('W-02', one => void (one.weight = 4))
   const both = await Promise.all([1, 2].map(() => hanne.post<RubricView>('/api/rubrics', { after: 1, note: 'Even lands count more.', rubric: wider })))
   expect(both.map(one => one.status).sort()).toEqual([201, 409])
+  expect(both.find(one => one.status === 409)?.body).toMatchObject({ code: 'rubric_stale' })
   const versions = (await imre.get<RubricSummary[]>('/api/rubrics')).body
   expect(versions.map(one => [one.version, one.savedBy])).toEqual([[2, 'Hanne Brockwell'], [1, null]])
   const weightOf = (view: RubricView) => view.rubric.stages.flatMap(stage => stage.criteria).find(one => one.id === 'W-02')?.weight
