@@ -85,7 +85,7 @@ function withComment(jpeg: Buffer, text: string): Buffer {
 const file = (which: number, ending: string) => readFileSync(new URL(`chamber-0${which}.${ending}`, folder))
 
 function whole(which: number): Promise<Buffer> {
-  return sharp(file(which, 'jpg')).rotate().resize({ width: 1100 }).jpeg({ quality: 68 }).toBuffer()
+  return sharp(file(which, 'jpg')).rotate().resize({ width: 900 }).jpeg({ quality: 60 }).toBuffer()
 }
 
 /** The seat close up: a square round its centre, three of its radii wide. */
@@ -97,5 +97,5 @@ async function seat(which: number, side: Side): Promise<Buffer> {
   const left = Math.min(Math.max(0, centre[0] - half), width - 2 * half)
   const top = Math.min(Math.max(0, centre[1] - half), height - 2 * half)
   // Clicks are in the stored picture, so it is cut before it is turned upright.
-  return sharp(file(which, 'jpg')).extract({ left, top, width: 2 * half, height: 2 * half }).jpeg({ quality: 74 }).toBuffer()
+  return sharp(file(which, 'jpg')).extract({ left, top, width: 2 * half, height: 2 * half }).resize({ width: 640, withoutEnlargement: true }).jpeg({ quality: 66 }).toBuffer()
 }
