@@ -4,6 +4,7 @@ import { CriterionResult } from '#server/db/entities/CriterionResult'
 import { ScoreSet } from '#server/db/entities/ScoreSet'
 import type { Submission } from '#server/db/entities/Submission'
 import { signal } from '#server/utils/signals'
+import { instructorGives } from '#shared/domain/rubric/instructor-gives'
 import { finalScore } from './final-score'
 import type { PointCase } from './point-case'
 import { newestOverrides, type StandingRow } from './point-results'
@@ -13,14 +14,17 @@ type Decision = 'release' | 'send-back' | 'stop'
 
 /**
  * Closes what a review decided: the submission, and with a release every submission without a point that the point covers. Sent back,
- * those of them are closed too that hold a must that was not met, so that they get a next try; the others stay as they are.
+ * those of them are closed too that hold a must that was not met, so that they get a next try; the others stay as they are. A must
+ * only a person can judge and nobody judged yet is not the student's to bring again.
  * Score and word become the person's; releases of this try that waited for a second person count no longer unless it was released.
  */
 export async function closeSubmissions(tx: EntityManager, submission: Submission, given: PointCase, decision: Decision, now: Date): Promise<void> {
   const { others, rubric, criteria, rows } = given
   const isUnmet = (other: Submission): boolean => rows.some((row) => {
     const criterion = criteria.find(one => one.id === row.result.criterion)
-    return row.submission === other && (criterion?.mustPass || criterion?.safetyStop) && ['reject', 'not-assessed'].includes(standingState(row))
+    const state = standingState(row)
+    return row.submission === other && criterion !== undefined && (criterion.mustPass || criterion.safetyStop)
+      && (state === 'reject' || (state === 'not-assessed' && !instructorGives(criterion)))
   })
   const closing = [submission, ...others.filter(other => decision === 'release' || (decision === 'send-back' && isUnmet(other)))]
   for (const one of closing) {

@@ -272,6 +272,16 @@ it('decides with Hold 5 the stages without a point that it needs, and refuses wh
   expect(decided.map(one => [one.op, one.part, one.decision])).toEqual([[60, 'rest', 'release'], [70, 'rest', 'release'], [90, 'rest', 'release'], [100, 'rest', 'release']])
 })
 
+it('sends back with a point only those stages whose proof did not do, not what a person had yet to judge', async () => {
+  await school.scored({ op: 60 })
+  await school.scored({ op: 70, changes: [{ criterion: 'W-08', state: 'not-assessed' }] })
+  await school.scored({ op: 90, changes: [{ criterion: 'G-01', cylinder: 2, side: 'intake', state: 'not-assessed' }] })
+  const { id } = await school.scored({ op: 100, point: 'hold-5', changes: [{ criterion: 'FB-01', state: 'reject' }] })
+  await decide(school.marit, id, { decision: 'send-back', feedback: 'Three low lifts are down.' })
+  const sent = await school.em().find(Submission, { decision: 'send-back' }, { orderBy: { op: 'asc' } })
+  expect(sent.map(one => one.op)).toEqual([90, 100])
+})
+
 it('judges what a part re-measured by the later part alone', async () => {
   await school.scored({ op: 60 })
   await school.scored({ op: 70, part: 'first', point: 'hold-4', changes: [{ criterion: 'W-01', state: 'reject' }] })
