@@ -1,5 +1,8 @@
 import { createHash, randomBytes } from 'node:crypto'
+import pg from 'pg'
+import type { BenchView, SubmissionView } from '#shared/contract/views'
 import { s3Storage } from '../../server/adapters/storage/s3'
+import { read } from './calls'
 import { expect, ready, signIn, test } from './walk'
 
 test('sends a stranger to the sign-in page, and in with the right password alone', async ({ page }) => {
@@ -47,4 +50,32 @@ test('comes back after the web and the worker were killed', async ({ request, sc
   for (const pid of before) process.kill(pid, 'SIGKILL')
   await expect.poll(() => all.every((one, at) => one.mark() !== null && one.mark()?.pid !== before[at]), { timeout: 10_000 }).toBe(true)
   await expect.poll(() => request.get('/api/health').then(answer => answer.status(), () => 0), { timeout: 20_000 }).toBe(200)
+})
+
+test('scores once what the worker was killed over, and the page shows it', async ({ page, school }) => {
+  await signIn(page, 'osric')
+  const id = (await read<BenchView>(page, '/api/bench')).next?.submission?.id
+  await page.goto(`/proof/${id}`)
+  await ready(page)
+  const database = new pg.Client({ connectionString: school.databaseUrl })
+  await database.connect()
+  try {
+    // With this lock a worker that has judged the proof cannot write what it found: it is killed in the middle, not before or after.
+    await database.query('begin; lock table score_set in share mode')
+    await page.getByRole('button', { name: /^Ask for/ }).click()
+    const job = async () => (await database.query<{ state: string }>('select state::text from pgboss.job where name = \'score-submission\' and data ->> \'submissionId\' = $1', [id])).rows[0]?.state
+    const stuck = async () => (await database.query<{ n: number }>('select count(*)::int as n from pg_locks where relation = \'score_set\'::regclass and not granted')).rows[0]?.n
+    await expect.poll(job).toBe('active')
+    await expect.poll(stuck).toBe(1)
+    await expect(page.getByText('Being scored. This page follows by itself.')).toBeVisible()
+    const pid = school.stack.worker.mark()?.pid ?? 0
+    process.kill(pid, 'SIGKILL')
+    await database.query('rollback')
+    await expect(page.locator('[data-criterion]').first()).toBeVisible({ timeout: 20_000 })
+    expect((await read<SubmissionView>(page, `/api/submissions/${id}`)).state).toBe('scored')
+    expect((await database.query<{ n: number }>('select count(*)::int as n from score_set where submission_id = $1', [id])).rows).toEqual([{ n: 1 }])
+  }
+  finally {
+    await database.end()
+  }
 })
