@@ -31,17 +31,19 @@ export interface WantedItem extends WantItem {
  */
 export function wantedOf(stage: RubricStage, evidence: EvidenceSet): WantedItem[] {
   const merged = new Map<string, WantedItem>()
+  // Only the stage's own readings can be wanted proof of it; a head has many times as many.
+  const own = { ...evidence, readings: evidence.readings.filter(one => one.op === evidence.op) }
   for (const criterion of criteriaOfPart(stage, evidence.part)) {
     if (doesNotApplyBecause(criterion, evidence) !== null) continue
-    const own = new Map<string, WantItem>()
-    for (const item of [...wantItems(criterion, evidence), ...typedForPhoto(criterion, evidence)]) {
+    const items = new Map<string, WantItem>()
+    for (const item of [...wantItems(criterion, own), ...typedForPhoto(criterion, own)]) {
       const key = keyOf(item)
-      const before = own.get(key)
-      own.set(key, before ? { ...before, count: before.count + item.count, note: joinNotes(before.note, item.note) } : item)
+      const before = items.get(key)
+      items.set(key, before ? { ...before, count: before.count + item.count, note: joinNotes(before.note, item.note) } : item)
     }
-    for (const [key, item] of own) {
+    for (const [key, item] of items) {
       const before = merged.get(key)
-      if (!before) merged.set(key, { ...item, ...described(item, evidence), criteria: [criterion.id] })
+      if (!before) merged.set(key, { ...item, ...described(item, own), criteria: [criterion.id] })
       else {
         before.count = Math.max(before.count, item.count)
         before.have = Math.max(before.have, item.have)

@@ -31,3 +31,13 @@ it('knows one spot under different hands', () => {
   expect(sameSpot(null, '12')).toBe(false)
   expect(sameSpot(null, null)).toBe(true)
 })
+
+it.each([
+  ['roof, fore', ['roof,fore', 'roof ,fore', 'roof ,  fore', ' roof, fore', 'roof, fore ', 'ROOF, Fore', 'roof,\tfore', 'roof,\u00a0fore']],
+  ['1:30', ['01:30', ' 1:30', '1:30\n']],
+  ['12', ['12:00', '12 ', ' 12:00']],
+  ['height -8', ['height \u22128', 'height  -8', 'Height \u20138']],
+])('knows %s however it is written, whichever of the two is', (spot, ways) => {
+  for (const way of ways) expect([sameSpot(way, spot), sameSpot(spot, way)], JSON.stringify(way)).toEqual([true, true])
+  for (const way of ways) expect(sameSpot(way, `${spot} upper`), JSON.stringify(way)).toBe(false)
+})
