@@ -7,7 +7,7 @@ import { criterion, openReview } from './review-page'
 import { expect, ready, signIn, test } from './walk'
 
 // The evening before: bowls are done, and a seat's edge was rounded without anybody knowing.
-test.use({ until: bettanyHold5, story: 'bettany', consoleMaySay: [/status of 409/] })
+test.use({ until: bettanyHold5, story: 'bettany', consoleMaySay: /status of 409/ })
 
 test('finds the lost low lifts, sends them back, and compares the second try with the first', async ({ page, another, school }) => {
   test.setTimeout(120_000)

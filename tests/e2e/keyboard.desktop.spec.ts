@@ -28,7 +28,7 @@ test('types readings one after the other', async ({ page, another }) => {
   const { id } = await must<{ id: string }>(page, `/api/heads/${head?.id}/stages/70/submissions`)
   await page.goto(`/proof/${id}/read`)
   await ready(page)
-  const display = page.getByLabel('Figure as the instrument shows it')
+  const display = page.getByRole('textbox', { name: 'Figure as the instrument shows it' })
   const spots = page.getByRole('navigation', { name: 'Spots to read' })
   await tabTo(page, display)
   for (const figure of ['1.65', '1.66', '1.64']) {

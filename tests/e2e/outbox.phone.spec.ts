@@ -7,7 +7,7 @@ import { expect, ready, signIn, test } from './walk'
 import type { Page } from '@playwright/test'
 
 // Students about to show a first bowl, each in a test of their own; what the network and the session do to them is meant.
-test.use({ until: firstBowls, story: 'outbox', consoleMaySay: [/net::ERR_/, /status of 40[14]/] })
+test.use({ until: firstBowls, story: 'outbox', consoleMaySay: /net::ERR_|status of 40[14]/ })
 
 /** Opens the proof of the nth student's first bowl. */
 async function beginBowl(page: Page, another: (size: 'desktop') => Promise<Page>, nth: number): Promise<{ name: string, id: string }> {
@@ -79,7 +79,7 @@ test('keeps a figure on the pad through a reload, and sends it when it is read',
 
   await page.reload()
   await ready(page)
-  const display = page.getByLabel('Figure as the instrument shows it')
+  const display = page.getByRole('textbox', { name: 'Figure as the instrument shows it' })
   await expect(display).toHaveValue('1.6')
   await expect(page.getByRole('button', { name: 'Take 1.64 off' })).toBeVisible()
   await expect(spot).toHaveAttribute('aria-current', 'true')
@@ -99,7 +99,7 @@ test('loses nothing when the session ends, and shows none of it to somebody else
   const { name, id } = await beginBowl(page, another, 2)
   await page.goto(`/proof/${id}/read`)
   await ready(page)
-  const display = page.getByLabel('Figure as the instrument shows it')
+  const display = page.getByRole('textbox', { name: 'Figure as the instrument shows it' })
   await must(page, '/api/me/sign-out-everywhere')
   for (const figure of ['1.61', '1.62']) {
     await display.pressSequentially(figure)

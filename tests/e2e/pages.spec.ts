@@ -71,7 +71,7 @@ test('the office\'s and the safety officer\'s pages serve everybody', async ({ p
 })
 
 test.describe('an address with nothing behind it', () => {
-  test.use({ consoleMaySay: [/status of 404/] })
+  test.use({ consoleMaySay: /status of 404/ })
   test('says so in words', async ({ page }) => {
     await signIn(page, 'imre')
     await page.goto('/no-such-page')

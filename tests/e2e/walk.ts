@@ -11,8 +11,8 @@ type Size = 'phone' | 'desktop'
 type Fixtures = {
   /** Another person's browser, beside `page`: their own cookies and storage, watched in the same way. */
   another: (size: Size) => Promise<Page>
-  /** Lines the browser may say on its console in this test; any other warning or error fails it. */
-  consoleMaySay: RegExp[]
+  /** What the browser may say on its console in this test; any other warning or error fails it. */
+  consoleMaySay: RegExp | null
   quiet: { watch: (context: BrowserContext) => void }
 }
 
@@ -34,13 +34,13 @@ export const test = base.extend<Fixtures, Options & { school: School }>({
     await school.stop()
   }, { scope: 'worker', timeout: 180_000 }],
   baseURL: async ({ school }, use) => use(school.url),
-  consoleMaySay: [[], { option: true }],
+  consoleMaySay: [null, { option: true }],
   quiet: [async ({ context, consoleMaySay }, use) => {
     const complaints: string[] = []
     const outside: string[] = []
     const watch = (watched: BrowserContext) => {
       watched.on('console', (message) => {
-        if (['error', 'warning'].includes(message.type()) && !consoleMaySay.some(allowed => allowed.test(message.text()))) complaints.push(message.text())
+        if (['error', 'warning'].includes(message.type()) && !consoleMaySay?.test(message.text())) complaints.push(message.text())
       })
       watched.on('weberror', error => complaints.push(String(error.error())))
       watched.on('request', (request) => {
