@@ -72,6 +72,9 @@ export async function handIn(em: EntityManager, app: App, actor: Actor, submissi
   })
 }
 
+/** What is read before a cut is read this long before the rest, ms. */
+const beforeTheCut = 40 * 60_000
+
 /** A reading as `recordReading` would keep it, refused by the same checks. */
 function readingRow(reading: ProofToHandIn['readings'][number], instruments: ReadonlyMap<string, Instrument>, submission: FoundSubmission, { addedBy, at }: { addedBy: string, at: Date }) {
   const { card } = submission.head.$.casting.$
@@ -86,7 +89,7 @@ function readingRow(reading: ProofToHandIn['readings'][number], instruments: Rea
   refuseImplausible(quantity, typed.values, reading.values, unit, { card, side: reading.side })
   return {
     id: crypto.randomUUID(), submission: submission.id, quantity: reading.quantity, cylinder: reading.cylinder, side: reading.side, at: reading.spot === null ? null : { spot: reading.spot }, when: reading.when,
-    asTyped: reading.values, unit, values: typed.values, baseUnit: unit, instrument: instrument.id, expandedU: doubtOfReading(instrument, typed.values, unit), addedBy, takenAt: at, recordedAt: at, voids: null, voidedAt: null,
+    asTyped: reading.values, unit, values: typed.values, baseUnit: unit, instrument: instrument.id, expandedU: doubtOfReading(instrument, typed.values, unit), addedBy, takenAt: reading.when === 'before' ? new Date(at.getTime() - beforeTheCut) : at, recordedAt: at, voids: null, voidedAt: null,
   }
 }
 

@@ -45,10 +45,10 @@ function spotsOf(item: WantedItem, evidence: EvidenceSet, firstCylinder: number)
   return [item.side !== null && item.cylinder === null ? { ...one, cylinder: firstCylinder } : one]
 }
 
-/** What the program will measure from a picture one day and a person types until then. */
+/** What is read from a picture or a mould and typed, although no reading is named among what is wanted. */
 function typedForPhotos(stage: RubricStage, evidence: EvidenceSet, firstCylinder: number): SpotToRead[] {
   return criteriaOfPart(stage, evidence.part)
-    .filter(one => one.kind === 'photo-measured' && !one.wants.some(want => want.kind === 'reading') && doesNotApplyBecause(one, evidence) === null)
+    .filter(one => (one.kind === 'photo-measured' || one.kind === 'measured') && !one.wants.some(want => want.kind === 'reading') && doesNotApplyBecause(one, evidence) === null)
     .flatMap(criterion => unitsOf(criterion, evidence).flatMap((unit): SpotToRead[] =>
       placesOf(criterion).map(spot => ({
         quantity: criterion.quantity, op: evidence.op, cylinder: unit.side !== null && unit.cylinder === null ? firstCylinder : unit.cylinder, side: unit.side, spot, when: null, count: 1,

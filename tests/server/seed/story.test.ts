@@ -88,6 +88,14 @@ describe('on 26 March at 19:40', () => {
     expect(views.map(view => stateOf(view, 'B-02'))).toEqual(['borderline', 'accept'])
   })
 
+  it('has nothing of Imre\'s cutting rejected, and nothing unassessed that he could have read', async () => {
+    for (const op of [40, 50, 60, 70, 90, 110, 120]) {
+      const { criteria } = await submissionOf(told, 'DNK-0147', op)
+      const open = criteria.filter(one => !['accept', 'does-not-apply'].includes(one.state) && !(one.state === 'not-assessed' && one.kind === 'judged'))
+      expect(open.map(one => [op, one.id, one.state])).toEqual([])
+    }
+  })
+
   it('sent Bettany\'s Hold 5 back for the three low lifts, with pins where to look', async () => {
     expect((await pointsOf(told, 'DNK-0152'))['hold-5']).toBe('sent back')
     const [first] = await told.app.orm.em.fork().find(Submission, { head: { number: 'DNK-0152' }, op: 100, decision: 'send-back' })
