@@ -10,7 +10,8 @@ export const Casting = defineEntity({
     code: p.string().length(20),
     name: p.string().length(80),
     version: p.integer(),
-    card: p.json<CastingCard>(),
+    // Never changed, so not compared at every flush: it is the largest thing a request loads.
+    card: p.json<CastingCard>().trackChanges(false),
     createdAt: instant().onCreate(() => new Date()),
   },
   uniques: [{ properties: ['code', 'version'] }],

@@ -9,7 +9,8 @@ export const RubricVersion = defineEntity({
   properties: {
     id: id(),
     version: p.integer().unique(),
-    rubric: p.json<Rubric>(),
+    // Never changed, so not compared at every flush: it is the largest thing a request loads.
+    rubric: p.json<Rubric>().trackChanges(false),
     note: p.text().default(''),
     savedBy: () => p.manyToOne(User).ref().nullable(),
     savedAt: instant(),

@@ -6,17 +6,14 @@ import { readingsOf } from './readings-of'
 import { readingValue } from './reading-value'
 import { quantityInWords, unitInWords } from './words'
 
-/**
- * Whether the readings of a quantity that count now are told apart by "before" and "after": only where the criterion's wants do.
- */
-export function whenNow(criterion: Criterion, quantity: string, evidence: EvidenceSet): { when?: 'before' | 'after' } {
-  const tells = criterion.wants.some(want => want.quantity === quantity && want.when !== undefined)
-  return tells ? { when: evidence.part === 'before' ? 'before' : 'after' } : {}
+/** What "now" is for a part: before the first cut it is a "before", from then on an "after". A reading that says neither is of now. */
+export function whenNow(evidence: Pick<EvidenceSet, 'part'>): { when: 'before' | 'after' } {
+  return { when: evidence.part === 'before' ? 'before' : 'after' }
 }
 
 /** Readings of a quantity that count for a criterion now, one a spot; empty when nobody read it. */
 export function readingsNow(evidence: EvidenceSet, criterion: Criterion, unit: JudgedUnit, quantity = criterion.quantity): ReadingEvidence[] {
-  return readingsOf(evidence, { quantity, unit, ...whenNow(criterion, quantity, evidence) })
+  return readingsOf(evidence, { quantity, unit, ...whenNow(evidence) })
 }
 
 /** The same as values in the unit of the criterion. */

@@ -55,9 +55,13 @@ export function wantedOf(stage: RubricStage, evidence: EvidenceSet): WantedItem[
   return [...merged.values()]
 }
 
-/** A criterion measured from a photo wants, until the program measures it, a reading a person types: one at each unit, wherever the worst is. */
+/**
+ * What the rubric names no reading for but somebody has to read: until the program measures photos itself, a person types one at each
+ * unit, wherever the worst is.
+ */
 function typedForPhoto(criterion: Criterion, evidence: EvidenceSet): WantItem[] {
-  if (criterion.kind !== 'photo-measured' || criterion.unit === 'yes/no' || criterion.wants.some(want => want.kind === 'reading')) return []
+  if ((criterion.kind !== 'photo-measured' && criterion.kind !== 'measured') || criterion.unit === 'yes/no') return []
+  if (criterion.wants.some(want => want.kind === 'reading' || want.kind === 'flow-sheet')) return []
   return unitsOf(criterion, evidence).map(unit => ({
     kind: 'reading', view: null, quantity: criterion.quantity, ...unit, spot: null, when: null, note: 'read by you where it is worst; say where', count: 1,
     have: allReadingsOf(evidence, { quantity: criterion.quantity, unit }).length,

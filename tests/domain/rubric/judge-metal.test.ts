@@ -231,3 +231,14 @@ describe('everything else with a reading', () => {
     expect([...states].sort()).toEqual(['accept', 'borderline', 'does-not-apply', 'not-assessed', 'reject'])
   })
 })
+
+describe('a width read before and after', () => {
+  it('is judged as it is now, even where the reading from before was typed later', () => {
+    const evidence = nothing(90, { ports: [{ cylinder: 1, side: 'intake' }], readings: [
+      reading('port-width', 'guide station', 42.3, { op: 90, when: 'after', takenAt: 1 }),
+      reading('port-width', 'guide station', 39.4, { op: 90, when: 'before', takenAt: 2 }),
+    ] })
+    // The casting card's own widths: 39.4 as received, 42.3 to aim at.
+    expect(judgeCriterion(criterionOf('G-03'), { ...evidence, photos: allPhotos(evidence) })[0]).toMatchObject({ value: 42.3, state: 'accept' })
+  })
+})

@@ -95,3 +95,7 @@ describe('what the program will measure from a photo one day', () => {
     expect(wantedOf(stageOf('L'), nothing(40)).some(item => item.quantity === 'no-grind-hatching')).toBe(false)
   })
 })
+
+it('asks for a figure where the rubric measures without naming a reading', () => {
+  expect(wantedOf(stageOf('H'), nothing(120, { ports: [{ cylinder: 1, side: 'exhaust' }] })).filter(item => item.quantity === 'floor-drop' && item.kind === 'reading')).not.toHaveLength(0)
+})
