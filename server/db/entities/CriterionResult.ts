@@ -20,10 +20,10 @@ export const CriterionResult = defineEntity({
     unit: p.string().length(30),
     expandedUncertainty: real().nullable(),
     pConform: real().nullable(),
-    metalLeft: p.json<Judged['metalLeft']>().nullable(),
+    metalLeft: p.json<Judged['metalLeft']>().trackChanges(false).nullable(),
     text: p.text(),
-    trace: p.json<Judged['trace']>(),
-    band: p.json<Judged['band']>().nullable(),
+    trace: p.json<Judged['trace']>().trackChanges(false),
+    band: p.json<Judged['band']>().trackChanges(false).nullable(),
     typedForPhoto: p.boolean().default(false),
     /** Place in the set, so that pages list results in the rubric's order. */
     position: p.integer(),

@@ -20,7 +20,7 @@ export const Photo = defineEntity({
     /** Spot the want names ("thinnest", "12-6"), when it names one. */
     spot: p.string().length(80).nullable(),
     card: () => p.manyToOne(ScaleCard).ref().nullable(),
-    seatDepth: p.json<{ value: string, unit: string, instrument: string }>().nullable(),
+    seatDepth: p.json<{ value: string, unit: string, instrument: string }>().trackChanges(false).nullable(),
     clockMark: real().nullable(),
     state: p.enum([...photoStates]).default('taken'),
     /** One line that says what to do, when it cannot be used. */

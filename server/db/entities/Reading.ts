@@ -16,7 +16,7 @@ export const Reading = defineEntity({
     quantity: p.string().length(60),
     cylinder: p.integer().nullable(),
     side: p.enum(['intake', 'exhaust'] as const).nullable(),
-    at: p.json<ReadingAt>().nullable(),
+    at: p.json<ReadingAt>().trackChanges(false).nullable(),
     when: p.enum(['before', 'after'] as const).nullable(),
     /** The figures as they were typed, and their unit. */
     asTyped: p.array(),

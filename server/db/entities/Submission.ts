@@ -23,7 +23,7 @@ export const Submission = defineEntity({
     version: p.integer().default(1),
     state: p.enum([...submissionStates]).default('draft'),
     /** Ports this part covers. */
-    ports: p.json<{ cylinder: number, side: 'intake' | 'exhaust' }[]>(),
+    ports: p.json<{ cylinder: number, side: 'intake' | 'exhaust' }[]>().trackChanges(false),
     note: p.text().default(''),
     startedBy: () => p.manyToOne(User).ref(),
     createdAt: instant(),

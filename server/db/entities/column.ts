@@ -8,3 +8,6 @@ export const real = () => p.float().columnType('double precision')
 
 /** An instant, kept with its zone. */
 export const instant = () => p.datetime().columnType('timestamptz')
+
+// JSON columns say `.trackChanges(false)`: what is in them is written once with its row, and comparing it at every flush costs more
+// than all the rest of a request.
