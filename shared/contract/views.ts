@@ -101,7 +101,7 @@ export interface PinView { number: number, photoId: string, x: number, y: number
 export interface FeedbackView {
   id: string, submissionId: string, head: string, op: number, stageName: string, point: string | null, pointName: string | null, try: number, decision: 'release' | 'send-back' | 'stop', by: string, at: string, condition: string | null, conditions: string[], feedback: string
   score: number | null, word: string | null
-  sentences: { criterion: string, title: string, cylinder: number | null, side: Side | null, at: string | null, state: CriterionState, text: string }[]
+  sentences: { criterion: string, title: string, cylinder: number | null, side: Side | null, at: string | null, state: CriterionState, text: string, edited: boolean }[]
   pins: PinView[]
   readAt: string | null
 }

@@ -34,7 +34,7 @@ export async function feedbackViews(em: EntityManager, reviews: readonly LoadedR
       feedback: review.feedback,
       score: submission.score ?? null,
       word: submission.word ?? null,
-      sentences: review.sentences.map(({ criterion, title, cylinder, side, at, state, text }) => ({ criterion, title, cylinder, side, at, state, text })),
+      sentences: review.sentences.map(({ criterion, title, cylinder, side, at, state, text, edited }) => ({ criterion, title, cylinder, side, at, state, text, edited })),
       pins: pins.filter(pin => pin.review.id === review.id).map(pin => ({ number: pin.number, photoId: pin.photo.id, x: pin.x, y: pin.y, criterion: pin.criterion, text: pin.text })),
       readAt: review.readAt?.toISOString() ?? null,
     }
