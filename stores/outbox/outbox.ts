@@ -47,9 +47,12 @@ export const useOutbox = defineStore('outbox', () => {
     void run()
   }
 
+  /** Two things of one millisecond still have an order, also after a reload. */
+  const nextTime = () => Math.max(Date.now(), (items.value.at(-1)?.addedAt ?? 0) + 1)
+
   function common(submissionId: string) {
     if (!person.value) throw new Error('outbox used before open()')
-    return { id: crypto.randomUUID(), uploadKey: crypto.randomUUID(), person: person.value, submissionId, addedAt: Date.now(), state: 'waiting' as const, progress: 0, problem: null }
+    return { id: crypto.randomUUID(), uploadKey: crypto.randomUUID(), person: person.value, submissionId, addedAt: nextTime(), state: 'waiting' as const, progress: 0, problem: null }
   }
 
   const addPhoto = (submissionId: string, file: File, input: Extract<OutboxItem, { kind: 'photo' }>['input']) => add({ ...common(submissionId), kind: 'photo', parcel: newParcel(file), input })
