@@ -22,14 +22,19 @@ export function useReadingPad(submissionId: string, submission: Ref<SubmissionVi
   const where = ref('')
   const unit = ref('mm')
   const instrument = ref('')
+  /** What stood here before is back; until then nothing is said of the spots. */
+  const restored = ref(false)
+  /** Spots sent from here: the outbox may be rid of one before this page hears that the server has it, and it must not come up again. */
+  const sent = new Set<string>()
 
   const spots = computed<PadSpot[]>(() => (submission.value?.wanted ?? []).filter(want => want.kind === 'reading').map(want => ({ key: [want.quantity, want.cylinder, want.side, want.spot, want.when].join('|'), want })))
   const spot = computed(() => spots.value.find(one => one.key === spotKey.value) ?? null)
   const fit = computed(() => (instruments.value ?? []).filter(one => spot.value?.want.quantity && one.quantities.includes(spot.value.want.quantity)))
 
-  /** Goes to the first spot that still lacks a reading, or the one named. */
+  /** Goes to the spot named, or on to the next that still lacks a reading; to none when every spot is read. */
   function choose(key?: string) {
-    const next = key ?? spots.value.find(one => one.want.have < one.want.count && !pendingAt(one))?.key ?? spots.value[0]?.key ?? null
+    const here = spots.value.findIndex(one => one.key === spotKey.value)
+    const next = key ?? [...spots.value.slice(here + 1), ...spots.value.slice(0, here + 1)].find(one => one.want.have < one.want.count && !pendingAt(one) && !sent.has(one.key))?.key ?? null
     if (next === spotKey.value) return
     spotKey.value = next
     values.value = []
@@ -51,8 +56,10 @@ export function useReadingPad(submissionId: string, submission: Ref<SubmissionVi
   async function restore() {
     if (!me.value) return
     const kept = await drafts.open(me.value.id, submissionId)
-    if (!kept) return choose()
-    choose([kept.quantity, kept.cylinder, kept.side, kept.spot, kept.when].join('|'))
+    restored.value = true
+    const key = kept && [kept.quantity, kept.cylinder, kept.side, kept.spot, kept.when].join('|')
+    if (!kept || !key || !spots.value.some(one => one.key === key)) return choose()
+    choose(key)
     values.value = kept.values
     where.value = kept.where ?? ''
     typing.value = kept.typing
@@ -79,9 +86,10 @@ export function useReadingPad(submissionId: string, submission: Ref<SubmissionVi
       quantity: now.quantity, cylinder: now.cylinder, side: now.side, values: [...now.values], unit: now.unit, instrument: now.instrument, takenAt: new Date().toISOString(),
       ...(now.spot || now.where.trim() ? { at: { spot: now.spot ?? now.where.trim() } } : {}), ...(now.when ? { when: now.when } : {}),
     })
+    if (spotKey.value) sent.add(spotKey.value)
     await drafts.discard(me.value.id, submissionId)
     values.value = []
     choose()
   }
-  return { spots, spot, spotKey, fit, values, typing, where, unit, instrument, choose, restore, addRepeat, dropRepeat, send, pendingAt }
+  return { restored, spots, spot, spotKey, fit, values, typing, where, unit, instrument, choose, restore, addRepeat, dropRepeat, send, pendingAt }
 }

@@ -28,18 +28,26 @@ test('types readings one after the other', async ({ page, another }) => {
   const { id } = await must<{ id: string }>(page, `/api/heads/${head?.id}/stages/70/submissions`)
   await page.goto(`/proof/${id}/read`)
   await ready(page)
+  // The page hears late that the server has a reading: the spot just read must not come up again meanwhile.
+  await page.route(url => url.pathname === `/api/submissions/${id}`, async (route) => {
+    await new Promise(resolve => setTimeout(resolve, 600))
+    await route.continue()
+  })
   const display = page.getByRole('textbox', { name: 'Figure as the instrument shows it' })
   const spots = page.getByRole('navigation', { name: 'Spots to read' })
   await tabTo(page, display)
-  for (const figure of ['1.65', '1.66', '1.64']) {
+  const there = async () => (await read<SubmissionView>(page, `/api/submissions/${id}`)).readings.flatMap(one => one.values)
+  const figures = ['1.65', '1.66', '1.64']
+  for (const [nth, figure] of figures.entries()) {
     await page.keyboard.type(figure)
     await expect(display).toHaveValue(figure)
     await page.keyboard.press('Enter')
     // The next spot is up, and the keyboard is where the next figure goes.
     await expect(display).toHaveValue('')
     await expect(display).toBeFocused()
+    await expect.poll(there).toHaveLength(nth + 1)
   }
-  await expect.poll(async () => (await read<SubmissionView>(page, `/api/submissions/${id}`)).readings.map(one => one.values[0]).sort()).toEqual(['1.64', '1.65', '1.66'])
+  expect((await there()).sort()).toEqual([...figures].sort())
   await expect(spots.getByText('read', { exact: true })).toHaveCount(3)
   await page.keyboard.type('1.x6')
   await expect(display).toHaveValue('1.6')
