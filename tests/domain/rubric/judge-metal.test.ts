@@ -242,3 +242,15 @@ describe('a width read before and after', () => {
     expect(judgeCriterion(criterionOf('G-03'), { ...evidence, photos: allPhotos(evidence) })[0]).toMatchObject({ value: 42.3, state: 'accept' })
   })
 })
+
+describe('a thin wall read again', () => {
+  const again = (instrument: string) => bowl(all => [...all.map(one => one.spot === 'bowl, fore' ? { ...one, values: [3.31] } : one),
+    reading('wall-thickness', 'bowl, fore', 5.1, { instrument, expandedU: 0.15 })])
+
+  it('stands against a newer, kinder reading by another gauge', () => {
+    expect(only(again('ultrasonic'), 'W-06')).toMatchObject({ state: 'reject', value: 3.31, at: 'bowl, fore' })
+  })
+  it('gives way to a newer reading by the same gauge', () => {
+    expect(only(again('wall gauge'), 'W-06').state).toBe('accept')
+  })
+})

@@ -2,10 +2,10 @@ import type { Evaluated } from '../../uncertainty/evaluated'
 import { wallSpots } from '../../geometry/wall-spots'
 import type { Criterion } from '../criterion'
 import type { EvidenceSet, Evaluation, Evaluator, JudgedUnit } from '../evidence'
-import { readingsOf } from '../readings-of'
+import { allReadingsOf, readingsOf } from '../readings-of'
 import { readingValue } from '../reading-value'
 import { sameSpot } from '../same-spot'
-import { notRead, readingsNow } from '../spot-values'
+import { notRead, readingsNow, whenNow } from '../spot-values'
 import { wallOfSpot } from '../wall-of-spot'
 
 /**
@@ -57,10 +57,14 @@ function countsByWall(spots: readonly string[]): string {
   return [...counts].map(([wall, count]) => `${wall} ${count}`).join(', ')
 }
 
-/** Every reading on the walls the criterion names, spots beyond the wanted ones included: the least is the least wherever it was found. */
+/**
+ * Every reading on the walls the criterion names, spots beyond the wanted ones included: the least is the least wherever it was found.
+ * A newer reading takes the place of an older one of the same gauge alone: a kinder gauge does not put metal back.
+ */
 function wallsOf(evidence: EvidenceSet, criterion: Criterion, unit: JudgedUnit): Evaluation {
   const walls = new Set(criterion.wants.filter(want => want.quantity === criterion.quantity && want.per !== 'head').flatMap(want => (want.places ?? []).map(wallOfSpot)))
-  const read = readingsNow(evidence, criterion, unit).filter(one => one.spot !== null && walls.has(wallOfSpot(one.spot)))
+  const all = allReadingsOf(evidence, { quantity: criterion.quantity, unit, ...whenNow(evidence) }).filter(one => one.spot !== null && walls.has(wallOfSpot(one.spot)))
+  const read = all.filter((one, index) => all.findIndex(other => other.instrument === one.instrument && other.cylinder === one.cylinder && other.side === one.side && sameSpot(other.spot, one.spot)) === index)
   if (read.length === 0) return notRead(criterion.quantity, unit)
   return { values: read.map(one => readingValue(one, 'mm')) }
 }
