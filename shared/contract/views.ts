@@ -126,8 +126,6 @@ export interface CastingView { code: string, name: string, version: number, card
 export interface RubricSummary { version: number, note: string, savedAt: string, savedBy: string | null }
 export interface RubricView extends RubricSummary { rubric: Rubric }
 export interface InstrumentView { code: string, name: string, quantities: string[], expandedU: number, relative: boolean, unit: string, due: string | null }
-export interface LessonSummary { number: number, slug: string, title: string, module: string, ops: number[] }
-export interface LessonView extends LessonSummary { html: string, version: number, publishedAt: string }
 /** Who is held and for how long, worst first. */
 export interface ShopBoardView { items: { head: { id: string, number: string }, student: { id: string, name: string }, cohort: { code: string, name: string }, stops: { id: string, where: string, reason: string, by: string, at: string }[], waiting: { id: string, op: number, stageName: string, point: { code: string, name: string } | null, state: string, since: string, minutes: number, stopStands: boolean }[] }[] }
 export interface SessionView { id: string, createdAt: string, expiresAt: string, agent: string, thisOne: boolean }

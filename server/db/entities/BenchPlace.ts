@@ -6,21 +6,58 @@ import { User } from './User'
 export const placeStates = ['asked', 'offered', 'deposit-paid', 'confirmed', 'here', 'finished', 'waiting-list', 'moved', 'cancelled', 'stopped'] as const
 export type PlaceState = (typeof placeStates)[number]
 
-/** A person's place in a cohort. Alumni are students whose place is `finished`. */
+/**
+ * Somebody's place in a cohort, from the ask on. Alumni are students whose place is `finished`.
+ *
+ * Only `offered`, `deposit-paid`, `confirmed` and `here` take a bench: those have a slot, held by a unique index; a trigger keeps
+ * slots within the cohort's number of places.
+ */
 export const BenchPlace = defineEntity({
   name: 'BenchPlace',
   properties: {
     id: id(),
     cohort: () => p.manyToOne(Cohort).ref(),
-    person: () => p.manyToOne(User).ref(),
+    /** The account; null until the place is paid for. */
+    person: () => p.manyToOne(User).ref().nullable(),
+    /** As asked; the account's own once there is one. */
+    name: p.string().length(120).default(''),
+    email: p.string().length(254).default(''),
+    note: p.text().default(''),
     state: p.enum([...placeStates]),
     /** Bench number, 1 to the cohort's places; null when the state takes none. */
     slot: p.integer().nullable(),
-    createdAt: instant().onCreate(() => new Date()),
+    /** Order of asking within the cohort; null for places not asked for (roster, demo). */
+    listNumber: p.integer().nullable(),
+    askedAt: instant().nullable(),
+    /** When the mailed link was opened: the address is real, and the place or the turn on the list is theirs. */
+    openedAt: instant().nullable(),
+    /** Until when an offered place is held. */
+    heldUntil: instant().nullable(),
+    /** Offers that ran out or were let go; the turn on the list stays. */
+    offersLetGo: p.integer().default(0),
+    depositPaidAt: instant().nullable(),
+    confirmedAt: instant().nullable(),
+    /** Id of the place this one was moved from (a foreign key in the database). A place is moved once. */
+    movedFromId: p.uuid().nullable(),
+    endedAt: instant().nullable(),
+    /** Who ended it and why: `student`, `school`, `illness`, `unsafe-work`, `not-paid`. */
+    endedBecause: p.string().length(40).nullable(),
     finishedAt: instant().nullable(),
+    /** Until when a finished student may read the lessons. */
+    accessUntil: instant().nullable(),
+    /** Grows when mailed links of this place should stop working. */
+    linkVersion: p.integer().default(1),
+    createdAt: instant().onCreate(() => new Date()),
   },
-  uniques: [{ properties: ['cohort', 'person'] }],
-  // A bench takes one person; states that take none have no part in it.
-  indexes: [{ name: 'bench_place_slot_taken', expression: `create unique index "bench_place_slot_taken" on "bench_place" ("cohort_id", "slot") where "state" in ('offered', 'deposit-paid', 'confirmed', 'here')` }],
+  uniques: [{ properties: ['cohort', 'person'] }, { properties: ['cohort', 'listNumber'] }],
+  indexes: [
+    { properties: ['state', 'heldUntil'] },
+    { properties: ['email'] },
+    // A bench takes one person; states that take none have no part in it.
+    { name: 'bench_place_slot_taken', expression: `create unique index "bench_place_slot_taken" on "bench_place" ("cohort_id", "slot") where "state" in ('offered', 'deposit-paid', 'confirmed', 'here')` },
+    // One open offer an address, whichever cohort.
+    { name: 'bench_place_one_offer', expression: `create unique index "bench_place_one_offer" on "bench_place" (lower("email")) where "state" = 'offered' and "email" <> ''` },
+    { name: 'bench_place_one_ask', expression: `create unique index "bench_place_one_ask" on "bench_place" ("cohort_id", lower("email")) where "state" in ('asked', 'offered', 'waiting-list', 'deposit-paid', 'confirmed', 'here') and "email" <> ''` },
+  ],
 })
 export type BenchPlace = InferEntity<typeof BenchPlace>

@@ -1,5 +1,6 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
 import { id, instant } from './column'
+import { CourseModule } from './CourseModule'
 
 /** A lesson of the course. What it says is in its versions. */
 export const Lesson = defineEntity({
@@ -9,7 +10,7 @@ export const Lesson = defineEntity({
     number: p.integer().unique(),
     slug: p.string().length(80).unique(),
     title: p.string().length(160),
-    module: p.string().length(80),
+    module: () => p.manyToOne(CourseModule).ref(),
     /** Ops of the stages that need it. */
     ops: p.array(Number).columnType('integer[]'),
     createdAt: instant().onCreate(() => new Date()),

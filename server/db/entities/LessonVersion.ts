@@ -1,6 +1,8 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
+import type { LessonDocument } from '../../../shared/contract/lesson-document'
 import { id, instant } from './column'
 import { Lesson } from './Lesson'
+import { User } from './User'
 
 /** What a lesson said from a moment on; never changed after publishing. */
 export const LessonVersion = defineEntity({
@@ -9,8 +11,13 @@ export const LessonVersion = defineEntity({
     id: id(),
     lesson: () => p.manyToOne(Lesson).ref(),
     version: p.integer(),
-    /** Markdown of the starter curriculum. */
-    markdown: p.text(),
+    title: p.string().length(160),
+    /** The published document, checked against the lesson schema. */
+    document: p.json<LessonDocument>().trackChanges(false),
+    whatChanged: p.text(),
+    why: p.text(),
+    /** Null for the starter curriculum. */
+    publishedBy: () => p.manyToOne(User).ref().nullable(),
     publishedAt: instant(),
   },
   uniques: [{ properties: ['lesson', 'version'] }],

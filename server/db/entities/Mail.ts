@@ -15,6 +15,8 @@ export const Mail = defineEntity({
     subject: p.string().length(200),
     html: p.text(),
     text: p.text(),
+    /** Files that go with it, by their keys in storage. */
+    attachments: p.json<{ filename: string, key: string, contentType: string }[]>().trackChanges(false).nullable(),
     state: p.enum(['waiting', 'sent', 'dead'] as const).default('waiting'),
     tries: p.integer().default(0),
     messageId: p.string().length(200),

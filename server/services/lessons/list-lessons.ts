@@ -1,6 +1,6 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { Lesson } from '#server/db/entities/Lesson'
-import type { LessonSummary } from '#shared/contract/views'
+import type { LessonSummary } from '#shared/contract/lessons'
 
 /** The lessons of the course, in order. */
 export async function listLessons(em: EntityManager): Promise<LessonSummary[]> {

@@ -1,7 +1,7 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { LessonVersion } from '#server/db/entities/LessonVersion'
 import { Refusal } from '#server/utils/refusal'
-import type { LessonView } from '#shared/contract/views'
+import type { LessonView } from '#shared/contract/lessons'
 import { lessonHtml } from './lesson-html'
 
 /**
