@@ -2,7 +2,14 @@ import { z } from 'zod'
 import type { Money } from './money'
 import { cleanText, someText } from './text'
 
-/** Places, from the ask to the last evening: what strangers, students and the office send and see. Dates are YYYY-MM-DD, instants ISO. */
+/**
+ * Places, from the ask to the last evening: what strangers, students and the office send and see. Dates are YYYY-MM-DD, instants ISO.
+ *
+ * For everybody: GET /api/courses `{ items: CourseView[] }` · GET /api/cohorts/{code}/offer `CohortOffer` (404 unknown) · POST /api/cohorts/{code}/asks `PlaceAskAnswer`.
+ * Who has the mailed link: GET /api/place-links/{token} `PlaceLinkView` · POST …/open and …/pass, both answer the view · POST …/pay `PayAnswer`.
+ * The office: GET /api/places `Page<PlaceRow>` · GET /api/places/{id} `PlaceView` · GET …/refund-quote · POST …/steps, …/cancel, …/move, …/order, …/bank-payments, …/refunds
+ * · GET and POST /api/cohorts (`{ items: CohortRow[] }`), POST /api/cohorts/{code} `CohortChange` · POST …/roster/preview, …/roster · GET …/list `CohortListView`.
+ */
 
 export const cohortParams = z.object({ code: z.string().regex(/^[A-Z0-9-]{3,20}$/) })
 export const linkParams = z.object({ token: z.string().min(20).max(200) })
@@ -31,6 +38,8 @@ export interface PlaceAskAnswer { sentTo: string, freeNow: boolean }
 export interface PlaceLinkView {
   cohort: CohortOffer
   name: string, email: string, state: PlaceState
+  /** The school's clock when this was answered; what a wait is counted against. */
+  now: string
   /** Turn on the waiting list, 1 is next; null when not on it. */
   turn: number | null
   heldUntil: string | null
