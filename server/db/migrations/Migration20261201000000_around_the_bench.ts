@@ -59,7 +59,7 @@ export class Migration20261201000000_around_the_bench extends Migration {
     this.addSql(`create index "payment_state_created_at_index" on "payment" ("state", "created_at");`);
     this.addSql(`create unique index "payment_one_open" on "payment" ("place_id", "purpose") where "state" in ('begun', 'open');`);
 
-    this.addSql(`create table "refund" ("id" uuid not null, "place_id" uuid not null, "payment_id" uuid not null, "amount_minor" int not null, "currency" varchar(3) not null, "rule" varchar(60) not null, "wording" text not null, "sum" text not null, "decided_by_id" uuid null, "decided_at" timestamptz not null, "state" text check ("state" in ('decided', 'sent', 'refused')) not null, "provider_id" varchar(255) null, "problem" text null, constraint "refund_pkey" primary key ("id"));`);
+    this.addSql(`create table "refund" ("id" uuid not null, "place_id" uuid not null, "payment_id" uuid null, "purpose" text check ("purpose" in ('deposit', 'balance', 'renewal')) not null, "amount_minor" int not null, "currency" varchar(3) not null, "rule" varchar(60) not null, "wording" text not null, "sum" text not null, "decided_by_id" uuid null, "decided_at" timestamptz not null, "state" text check ("state" in ('decided', 'sent', 'refused')) not null, "tries" int not null default 0, "provider_id" varchar(255) null, "problem" text null, constraint "refund_pkey" primary key ("id"));`);
     this.addSql(`alter table "refund" add constraint "refund_provider_id_unique" unique ("provider_id");`);
     this.addSql(`create index "refund_place_id_index" on "refund" ("place_id");`);
     this.addSql(`create index "refund_state_decided_at_index" on "refund" ("state", "decided_at");`);
@@ -111,7 +111,7 @@ export class Migration20261201000000_around_the_bench extends Migration {
     this.addSql(`alter table "payment" add constraint "payment_place_id_foreign" foreign key ("place_id") references "bench_place" ("id") on update cascade;`);
 
     this.addSql(`alter table "refund" add constraint "refund_place_id_foreign" foreign key ("place_id") references "bench_place" ("id") on update cascade;`);
-    this.addSql(`alter table "refund" add constraint "refund_payment_id_foreign" foreign key ("payment_id") references "payment" ("id") on update cascade;`);
+    this.addSql(`alter table "refund" add constraint "refund_payment_id_foreign" foreign key ("payment_id") references "payment" ("id") on update cascade on delete set null;`);
     this.addSql(`alter table "refund" add constraint "refund_decided_by_id_foreign" foreign key ("decided_by_id") references "app_user" ("id") on update cascade on delete set null;`);
 
     this.addSql(`alter table "ledger_line" add constraint "ledger_line_place_id_foreign" foreign key ("place_id") references "bench_place" ("id") on update cascade;`);
