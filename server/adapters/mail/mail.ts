@@ -5,6 +5,8 @@ export interface OutgoingMail {
   subject: string
   html: string
   text: string
+  /** Files that go with it, whole. */
+  attachments?: { filename: string, contentType: string, content: Uint8Array }[]
 }
 
 /** `retry`: the other side may take it later. `dead`: it never will. */

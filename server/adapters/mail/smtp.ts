@@ -24,7 +24,8 @@ export function smtpMail({ url, from }: { url: string, from: string }): MailSend
           subject: mail.subject,
           html: mail.html,
           text: mail.text,
-          // Our messages carry no files and fetch nothing, whatever their text says.
+          attachments: (mail.attachments ?? []).map(({ filename, contentType, content }) => ({ filename, contentType, content: Buffer.from(content) })),
+          // Files are given whole: a message fetches nothing, whatever its text says.
           disableFileAccess: true,
           disableUrlAccess: true,
         })

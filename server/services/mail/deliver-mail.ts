@@ -14,7 +14,8 @@ export async function deliverMail(app: App, mailId: string): Promise<void> {
   const later = await app.orm.em.fork().transactional(async (tx): Promise<string | null> => {
     const mail = await tx.findOne(Mail, { id: mailId }, { lockMode: LockMode.PESSIMISTIC_WRITE })
     if (!mail || mail.state !== 'waiting') return null
-    const result = await app.mail.send({ messageId: mail.messageId, to: mail.to, subject: mail.subject, html: mail.html, text: mail.text })
+    const attachments = await Promise.all((mail.attachments ?? []).map(async ({ filename, key, contentType }) => ({ filename, contentType, content: await app.storage.read(key) })))
+    const result = await app.mail.send({ messageId: mail.messageId, to: mail.to, subject: mail.subject, html: mail.html, text: mail.text, attachments })
     mail.tries += 1
     if (result.state === 'sent') {
       mail.state = 'sent'

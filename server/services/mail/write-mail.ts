@@ -10,12 +10,18 @@ export interface MailToWrite {
   /** Says the same message once: "hold-released:<review>". A second write with the key changes and sends nothing. */
   key: string
   template: string
-  to: { id: string, email: string }
+  /** `id` of the account; null for somebody who has none (yet): a visitor, a sponsor. */
+  to: { id: string | null, email: string }
   letter: Letter
+  /** Files that go with it, by their keys in storage. */
+  attachments?: MailAttachment[]
 }
 
+/** A file in storage that goes with a message. */
+export interface MailAttachment { filename: string, key: string, contentType: string }
+
 /** Puts a message into the outbox, and the work of sending it into the queue, in the caller's transaction. */
-export async function writeMail(tx: EntityManager, app: App, { key, template, to, letter }: MailToWrite): Promise<void> {
+export async function writeMail(tx: EntityManager, app: App, { key, template, to, letter, attachments }: MailToWrite): Promise<void> {
   const { subject, html, text } = await renderLetter(letter)
   const id = crypto.randomUUID()
   // The unique key decides, whoever else writes the same message at this moment.
@@ -23,11 +29,12 @@ export async function writeMail(tx: EntityManager, app: App, { key, template, to
     id,
     key,
     template,
-    person: tx.getReference(User, to.id),
+    person: to.id === null ? null : tx.getReference(User, to.id),
     to: to.email,
     subject,
     html,
     text,
+    attachments: attachments ?? null,
     state: 'waiting',
     tries: 0,
     messageId: `${id}@${new URL(app.config.publicUrl).hostname}`,
