@@ -43,3 +43,13 @@ export function menuFor(roles: readonly MenuRole[], exists: (path: string) => bo
   const items = order.filter(role => roles.includes(role)).flatMap(role => menus[role])
   return items.filter((item, at) => exists(item.path) && items.findIndex(other => other.path === item.path) === at)
 }
+
+/** Roles of a person as the menu knows them: a student all of whose places are finished is alumni, and one who came back for another course is both. */
+export function menuRolesOf(person: { roles: readonly Exclude<MenuRole, 'alumni'>[], places: readonly string[] }): MenuRole[] {
+  const finished = person.places.includes('finished')
+  const atTheBench = !finished || person.places.some(state => currentStates.includes(state))
+  return person.roles.flatMap((role): MenuRole[] => role === 'student' ? [...(atTheBench ? ['student' as const] : []), ...(finished ? ['alumni' as const] : [])] : [role])
+}
+
+/** States of a place that is being used, or soon will be. */
+const currentStates = ['deposit-paid', 'confirmed', 'here']

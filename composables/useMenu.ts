@@ -1,4 +1,4 @@
-import { menuFor, type MenuItem, type MenuRole } from '~/composables/menu-for'
+import { menuFor, menuRolesOf, type MenuItem } from '~/composables/menu-for'
 
 /** The signed-in person and their menu, for the bar. Rights are the server's; this only decides which words are shown. */
 export function useMenu() {
@@ -8,8 +8,7 @@ export function useMenu() {
 
   const person = computed(() => data.value?.user ?? null)
   const items = computed<MenuItem[]>(() => {
-    const roles: MenuRole[] = person.value?.roles ?? []
-    return menuFor(roles, path => pages.has(path))
+    return menuFor(person.value ? menuRolesOf(person.value) : [], path => pages.has(path))
   })
   const home = computed(() => items.value[0]?.path ?? '/')
   const isHere = (item: MenuItem): boolean => route.path === item.path || route.path.startsWith(`${item.path}/`)

@@ -2,7 +2,7 @@
 declare module 'next-auth' {
   interface Session {
     expires: string
-    user?: { id: string, name: string, email: string, roles: ('student' | 'instructor' | 'admin' | 'safety')[], unit: 'mm' | 'in' }
+    user?: { id: string, name: string, email: string, roles: ('student' | 'instructor' | 'admin' | 'safety')[], unit: 'mm' | 'in', places: string[] }
   }
   export type { Session }
   export type AuthOptions = Record<string, unknown>

@@ -1,6 +1,7 @@
 import { Auth, type AuthConfig } from '@auth/core'
 import Credentials from '@auth/core/providers/credentials'
 import { getRequestIP, setResponseHeader, type H3Event } from 'h3'
+import { placeStatesOf } from '../services/people/place-states-of'
 import { endSessions, findBySignIn, openSession } from '../services/people/sign-in'
 import { refuseTooManyTries } from '../services/people/sign-in-throttle'
 import { answerProblem } from './answer-problem'
@@ -61,9 +62,10 @@ function authConfig(app: App, address: string, agent: string): AuthConfig {
         return { sid: token.sid, sub: actor.id }
       },
       async session({ session, token }) {
-        const actor = await findActor(app.orm.em.fork(), String(token.sid))
+        const em = app.orm.em.fork()
+        const actor = await findActor(em, String(token.sid))
         if (!actor) return { expires: session.expires }
-        return { expires: session.expires, user: { id: actor.id, name: actor.name, email: actor.email, roles: actor.roles, unit: actor.unit } }
+        return { expires: session.expires, user: { id: actor.id, name: actor.name, email: actor.email, roles: actor.roles, unit: actor.unit, places: await placeStatesOf(em, actor) } }
       },
     },
     events: {

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { menuFor, type MenuRole } from '~/composables/menu-for'
+import { menuFor, menuRolesOf, type MenuRole } from '~/composables/menu-for'
 
 const words = (roles: MenuRole[], exists: (path: string) => boolean = () => true) => menuFor(roles, exists).map(item => item.word)
 
@@ -20,5 +20,19 @@ describe('menuFor', () => {
   it('leaves out what leads nowhere yet, and gives nobody nothing', () => {
     expect(words(['student'], path => path !== '/feedback')).toEqual(['My bench', 'Route card', 'Lessons'])
     expect(words([])).toEqual([])
+  })
+})
+
+describe('menuRolesOf', () => {
+  it('takes a student with nothing but finished places for alumni', () => {
+    expect(menuRolesOf({ roles: ['student'], places: ['finished', 'cancelled'] })).toEqual(['alumni'])
+  })
+  it('gives both menus to somebody who came back for another course', () => {
+    expect(menuRolesOf({ roles: ['student'], places: ['finished', 'confirmed'] })).toEqual(['student', 'alumni'])
+  })
+  it('leaves everybody else as they are, with or without a place', () => {
+    expect(menuRolesOf({ roles: ['student'], places: [] })).toEqual(['student'])
+    expect(menuRolesOf({ roles: ['student'], places: ['here'] })).toEqual(['student'])
+    expect(menuRolesOf({ roles: ['instructor', 'admin'], places: [] })).toEqual(['instructor', 'admin'])
   })
 })
