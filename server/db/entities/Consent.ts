@@ -35,8 +35,6 @@ export const Consent = defineEntity({
     signedAs: p.string().length(120),
     /** Under 18: the guardian's name too. */
     guardian: p.string().length(120).nullable(),
-    /** First-aid information; only the safety officer reads it. */
-    firstAid: p.text().default(''),
     at: instant(),
   },
   uniques: [{ properties: ['person', 'text'] }],
@@ -56,3 +54,18 @@ export const SharingChoice = defineEntity({
   indexes: [{ properties: ['person', 'code', 'at'] }],
 })
 export type SharingChoice = InferEntity<typeof SharingChoice>
+
+/** What the shop keeps about a person's body; theirs to change or empty any day, so it is no part of what was signed. */
+export const SafetyNote = defineEntity({
+  name: 'SafetyNote',
+  properties: {
+    id: id(),
+    person: () => p.manyToOne(User).ref().unique(),
+    /** First-aid information; only the safety officer reads it. */
+    firstAid: p.text().default(''),
+    /** As people say it: "9", "42.5". */
+    bootSize: p.string().length(10).default(''),
+    changedAt: instant(),
+  },
+})
+export type SafetyNote = InferEntity<typeof SafetyNote>

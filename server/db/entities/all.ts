@@ -7,7 +7,7 @@ import { Casting } from './Casting'
 import { Clearance } from './Clearance'
 import { Cohort } from './Cohort'
 import { CohortStaff } from './CohortStaff'
-import { Consent, ConsentText, SharingChoice } from './Consent'
+import { Consent, ConsentText, SafetyNote, SharingChoice } from './Consent'
 import { Course } from './Course'
 import { CourseModule } from './CourseModule'
 import { CriterionResult } from './CriterionResult'
@@ -52,7 +52,7 @@ export const entities = [
   User, Session, SignInFailure, PasswordToken, Clearance, IdempotencyKey, SchoolSetting,
   Course, CourseModule, Cohort, BenchPlace, CohortStaff, AskTry, Sponsor, PurchaseOrder,
   Payment, PaymentEvent, LedgerLine, Refund, Receipt,
-  Consent, ConsentText, SharingChoice,
+  Consent, ConsentText, SafetyNote, SharingChoice,
   Lesson, LessonVersion, LessonDraft, LessonPassage, LessonProgress, LessonNote, MediaAsset, MediaTrack, WatchPosition,
   Casting, RubricVersion, PracticeHead, Instrument, ScaleCard,
   Upload, Submission, Photo, Reading, FlowSheet, FlowSheetReading, EvidenceDocument,

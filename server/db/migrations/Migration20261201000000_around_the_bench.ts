@@ -47,7 +47,7 @@ export class Migration20261201000000_around_the_bench extends Migration {
     this.addSql(`create table "consent_text" ("id" uuid not null, "version" int not null, "clauses" jsonb not null, "choices" jsonb not null, "stands_from" int not null, "saved_by_id" uuid null, "saved_at" timestamptz not null, constraint "consent_text_pkey" primary key ("id"));`);
     this.addSql(`alter table "consent_text" add constraint "consent_text_version_unique" unique ("version");`);
 
-    this.addSql(`create table "consent" ("id" uuid not null, "person_id" uuid not null, "text_id" uuid not null, "ticks" text[] not null, "signed_as" varchar(120) not null, "guardian" varchar(120) null, "first_aid" text not null default '', "at" timestamptz not null, constraint "consent_pkey" primary key ("id"));`);
+    this.addSql(`create table "consent" ("id" uuid not null, "person_id" uuid not null, "text_id" uuid not null, "ticks" text[] not null, "signed_as" varchar(120) not null, "guardian" varchar(120) null, "at" timestamptz not null, constraint "consent_pkey" primary key ("id"));`);
     this.addSql(`alter table "consent" add constraint "consent_person_id_text_id_unique" unique ("person_id", "text_id");`);
 
     this.addSql(`create table "purchase_order" ("id" uuid not null, "place_id" uuid not null, "sponsor_id" uuid not null, "number" varchar(60) not null, "amount_minor" int not null, "currency" varchar(3) not null, "received_at" timestamptz not null, "due_at" timestamptz not null, "taken_by_id" uuid not null, constraint "purchase_order_pkey" primary key ("id"));`);
@@ -77,6 +77,10 @@ export class Migration20261201000000_around_the_bench extends Migration {
     this.addSql(`alter table "watch_position" add constraint "watch_position_person_id_asset_id_unique" unique ("person_id", "asset_id");`);
 
     this.addSql(`alter table "course_module" add constraint "course_module_course_id_foreign" foreign key ("course_id") references "course" ("id") on update cascade;`);
+
+    this.addSql(`create table "safety_note" ("id" uuid not null, "person_id" uuid not null, "first_aid" text not null default '', "boot_size" varchar(10) not null default '', "changed_at" timestamptz not null, constraint "safety_note_pkey" primary key ("id"));`);
+    this.addSql(`alter table "safety_note" add constraint "safety_note_person_id_unique" unique ("person_id");`);
+    this.addSql(`alter table "safety_note" add constraint "safety_note_person_id_foreign" foreign key ("person_id") references "app_user" ("id") on update cascade;`);
 
     this.addSql(`alter table "sharing_choice" add constraint "sharing_choice_person_id_foreign" foreign key ("person_id") references "app_user" ("id") on update cascade;`);
 
