@@ -14,7 +14,11 @@ import { cleanText, someText } from './text'
 export const cohortParams = z.object({ code: z.string().regex(/^[A-Z0-9-]{3,20}$/) })
 export const linkParams = z.object({ token: z.string().min(20).max(200) })
 const email = z.string().trim().toLowerCase().email('an e-mail address').max(254)
-export const date = z.string().regex(/^\d{4}-\d{2}-\d{2}$/, 'is not a date')
+/** A day of the calendar that there is: not the 31st of February. */
+export const date = z.string().regex(/^\d{4}-\d{2}-\d{2}$/, 'is not a date').refine((text) => {
+  const at = new Date(`${text}T00:00:00Z`)
+  return Number.isFinite(at.getTime()) && at.toISOString().startsWith(text)
+}, 'is not a date')
 
 export type PlaceState = 'asked' | 'offered' | 'deposit-paid' | 'confirmed' | 'here' | 'finished' | 'waiting-list' | 'moved' | 'cancelled' | 'stopped'
 

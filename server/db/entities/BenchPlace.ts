@@ -31,6 +31,8 @@ export const BenchPlace = defineEntity({
     askedAt: instant().nullable(),
     /** When the mailed link was opened: the address is real, and the place or the turn on the list is theirs. */
     openedAt: instant().nullable(),
+    /** When the offer that stands was made. */
+    offeredAt: instant().nullable(),
     /** Until when an offered place is held. */
     heldUntil: instant().nullable(),
     /** Offers that ran out or were let go; the turn on the list stays. */
@@ -49,10 +51,13 @@ export const BenchPlace = defineEntity({
     linkVersion: p.integer().default(1),
     createdAt: instant().onCreate(() => new Date()),
   },
-  uniques: [{ properties: ['cohort', 'person'] }, { properties: ['cohort', 'listNumber'] }],
+  uniques: [{ properties: ['cohort', 'listNumber'] }],
   indexes: [
     { properties: ['state', 'heldUntil'] },
     { properties: ['email'] },
+    { properties: ['person'] },
+    // Nobody twice in a cohort; somebody who cancelled or moved may come back to it.
+    { name: 'bench_place_one_person', expression: `create unique index "bench_place_one_person" on "bench_place" ("cohort_id", "person_id") where "state" not in ('moved', 'cancelled', 'stopped')` },
     // A bench takes one person; states that take none have no part in it.
     { name: 'bench_place_slot_taken', expression: `create unique index "bench_place_slot_taken" on "bench_place" ("cohort_id", "slot") where "state" in ('offered', 'deposit-paid', 'confirmed', 'here')` },
     // One open offer an address, whichever cohort.
