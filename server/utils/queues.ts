@@ -5,6 +5,7 @@
 export const queues = {
   'score-submission': { policy: 'standard', retryLimit: 8, retryDelay: 1, retryBackoff: true, expireInSeconds: 8 },
   'prepare-photo': { policy: 'standard', retryLimit: 6, retryDelay: 2, retryBackoff: true, expireInSeconds: 120 },
+  'hash-media': { policy: 'standard', retryLimit: 6, retryDelay: 10, retryBackoff: true, expireInSeconds: 1800 },
   'send-mail': { policy: 'standard', retryLimit: 12, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'seal-audit': { policy: 'short', retryLimit: 3, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'clear-uploads': { policy: 'short', retryLimit: 3, retryDelay: 60, retryBackoff: true, expireInSeconds: 600 },
@@ -16,6 +17,7 @@ export type QueueName = keyof typeof queues
 export interface JobData {
   'score-submission': { submissionId: string }
   'prepare-photo': { photoId: string }
+  'hash-media': { mediaId: string }
   'send-mail': { mailId: string }
   'seal-audit': { reason: string }
   'clear-uploads': Record<string, never>

@@ -14,9 +14,24 @@ export interface MediaView {
   position: { seconds: number, finished: boolean } | null
 }
 
-export const mediaInput = z.object({ uploadId: z.string().uuid(), title: someText(160), durationSeconds: z.number().finite().min(0).max(86_400).optional(), width: z.number().int().min(1).max(20_000).optional(), height: z.number().int().min(1).max(20_000).optional() }).strict()
+const size = z.number().int().min(1).max(20_000)
+
+/** Length and size of a film are as the browser that sent it read them; a picture's are read here. */
+export const mediaInput = z.object({ uploadId: z.string().uuid(), title: someText(160), durationSeconds: z.number().finite().min(0).max(86_400).optional(), width: size.optional(), height: size.optional() }).strict()
 export type MediaInput = z.infer<typeof mediaInput>
-export const trackInput = z.object({ kind: z.enum(['captions', 'chapters']), language: z.string().regex(/^[a-z]{2,3}(-[A-Za-z0-9]{2,8})?$/, 'is not a language').default('en'), vtt: cleanText(500_000) }).strict()
+
+export const mediaQuery = z.object({ q: cleanText(160).optional(), kind: z.enum(['image', 'video']).optional(), after: z.string().max(400).optional(), limit: z.coerce.number().int().min(1).max(100).default(24) })
+export type MediaQuery = z.infer<typeof mediaQuery>
+
+const language = z.string().regex(/^[a-z]{2,3}(-[A-Za-z0-9]{2,8})?$/, 'is not a language').default('en')
+
+/** What a film's captions may weigh: an hour and a half of talk is about 100,000 characters. */
+export const longestTrack = 500_000
+
+export const trackInput = z.object({ kind: z.enum(['captions', 'chapters']), language, vtt: someText(longestTrack) }).strict()
 export type TrackInput = z.infer<typeof trackInput>
+export const trackFileParams = z.object({ id: z.string().uuid(), file: z.enum(['captions.vtt', 'chapters.vtt']) })
+export const trackFileQuery = z.object({ language })
+
 export const positionInput = z.object({ seconds: z.number().finite().min(0).max(86_400), finished: z.boolean().default(false) }).strict()
 export type PositionInput = z.infer<typeof positionInput>

@@ -19,5 +19,5 @@ export const typesOf: Record<UploadInput['purpose'], readonly string[]> = {
   'photo': ['image/jpeg', 'image/png', 'image/webp'],
   'flow-sheet': ['text/plain', 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet', 'application/zip'],
   'document': ['application/pdf', 'image/jpeg', 'image/png', 'image/webp', 'text/plain'],
-  'lesson-media': ['image/jpeg', 'image/png', 'image/webp', 'video/mp4', 'video/webm', 'text/plain'],
+  'lesson-media': ['image/jpeg', 'image/png', 'image/webp', 'video/mp4', 'video/webm'],
 }

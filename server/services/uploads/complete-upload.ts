@@ -7,7 +7,7 @@ import { Refusal } from '#server/utils/refusal'
 import { typesOf } from '#shared/contract/upload-limits'
 import { findUpload } from './find-upload'
 
-/** Files up to this are hashed anew when storage did not hash them whole. */
+/** Files up to this are hashed anew when storage did not hash them whole; a lesson's film is, by a job of its own. */
 const hashedHere = 64 * 1024 ** 2
 
 /**
@@ -53,10 +53,11 @@ async function fetchStored(app: App, upload: Upload, parts: readonly { n: number
 /** The detected type, or why the file is refused. */
 async function whatIsWrong(app: App, upload: Upload, stored: StoredObject): Promise<string | Refusal> {
   if (stored.bytes !== upload.bytes) return new Refusal('upload_differs', `${upload.bytes} bytes were announced and ${stored.bytes} arrived. Send the file again.`)
-  const sha256 = stored.sha256 ?? (upload.bytes <= hashedHere ? await app.storage.sha256Of(upload.key) : null)
+  const sha256 = stored.sha256 ?? (upload.bytes <= hashedHere && upload.purpose !== 'lesson-media' ? await app.storage.sha256Of(upload.key) : null)
   if (sha256 !== null && sha256 !== upload.sha256) return new Refusal('upload_differs')
   const first = await app.storage.readRange(upload.key, 0, 4095)
   const type = await app.imaging.detectType(first)
   if (typesOf[upload.purpose].includes(type)) return type
+  if (type === 'image/svg+xml' || type === 'text/html') return new Refusal('upload_wrong_type', `"${upload.filename}" is ${type === 'text/html' ? 'a web page' : 'an SVG drawing'}, whatever its name says, and may carry a program. Send the picture as JPEG, PNG or WebP.`)
   return new Refusal('upload_wrong_type', `"${upload.filename}" is ${type === 'application/octet-stream' ? 'of no kind we know' : type}, and a ${upload.purpose} cannot be that.`)
 }
