@@ -22,7 +22,7 @@ export interface RouteCase {
   stages: readonly RubricStage[]
   now: number
   headState: 'received' | 'working' | 'finished' | 'scrapped' | 'sawn'
-  /** A head of one's own: measured along the same route, but nobody releases it and no clearance of the school is asked for. */
+  /** A head of one's own: measured along the same route, but nobody releases it, and neither clearance nor safety form of the school is asked for. */
   personal: boolean
   releases: readonly RouteRelease[]
   calls: readonly RouteCall[]
@@ -30,6 +30,8 @@ export interface RouteCase {
   stops: readonly { where: string, reason: string }[]
   /** Clearances of the student that were not withdrawn. */
   clearances: readonly { tool: string, from: number, until: number }[]
+  /** Whether the student signed the safety form as it stands. `asked again`: a safety clause changed since. */
+  consent: 'signed' | 'asked again' | 'none'
   submissions: readonly RouteSubmission[]
 }
 
@@ -57,7 +59,7 @@ export interface RouteStage {
   state: 'shut' | 'open' | 'held' | 'done'
   why: string | null
   /** Set where something forbids work on it: what a refusal says. */
-  shutBy: 'stage_not_open' | 'clearance_missing' | 'head_stopped' | null
+  shutBy: 'stage_not_open' | 'consent_missing' | 'clearance_missing' | 'head_stopped' | null
   points: RoutePoint[]
   due: DuePart | null
   /** Newest submission of the part that is due, else of the stage. */
@@ -80,7 +82,8 @@ export function pointOfPart(stage: RubricStage, part: SubmissionPart): RubricPoi
  * How every stage and point of a head stands, why, and which part is due.
  *
  * A stage is open when every earlier hold is released (by as many different people as it needs), every earlier witness point was
- * told and its wait is over, the clearances it names are valid, and no stop stands on the head. It is done when each of its parts
+ * told and its wait is over, the clearances it names are valid, and no stop stands on the head. One that needs a tool needs the safety
+ * form signed too. It is done when each of its parts
  * is: one with a hold when the hold is released, one with a witness point when that was told and waited for, one without a point
  * when it is scored. It is held while a point of it was asked or told and nothing else of it may be done. What is due is the first
  * part that is not done; sent back, it is due again as the next try.
@@ -122,6 +125,7 @@ function whyShut(stage: RubricStage, earlier: readonly RoutePoint[], route: Rout
   if (stop) return { why: `A stop stands on this head: ${stop.where}. ${stop.reason}`.trim(), shutBy: 'head_stopped' }
   const before = earlier.find(point => !point.letsOn)
   if (before) return { why: whyNotPast(before), shutBy: 'stage_not_open' }
+  if (stage.clearances.length > 0 && route.consent !== 'signed') return { why: whyNotSigned(route.consent), shutBy: 'consent_missing' }
   const missing = stage.clearances.filter(tool => !route.clearances.some(one => one.tool === tool && one.from <= route.now && route.now < one.until))
   if (missing.length > 0) return { why: whyNotCleared(missing, route), shutBy: 'clearance_missing' }
   return null
@@ -130,6 +134,10 @@ function whyShut(stage: RubricStage, earlier: readonly RoutePoint[], route: Rout
 function whyNotPast(point: RoutePoint): string {
   if (point.kind === 'hold') return point.state === 'shut' ? `${point.name} comes first.` : `${point.name} is ${point.state}, not released.`
   return point.state === 'told' ? `${point.name} was told; its wait is not over.` : point.state === 'sent back' || point.state === 'stopped' ? `${point.name} is ${point.state}.` : `${point.name} comes first: nobody was told of it yet.`
+}
+
+function whyNotSigned(consent: 'asked again' | 'none'): string {
+  return consent === 'none' ? 'Sign the safety form first.' : 'The safety form changed since you signed it. Sign it again first.'
 }
 
 function whyNotCleared(missing: readonly string[], route: RouteCase): string {

@@ -19,7 +19,7 @@ function route(op: number, change: Partial<RouteCase> = {}) {
   const submissions = before.flatMap(stage => partsOfStage(stage).map(part => submission({ op: stage.op, part, state: 'decided', decision: 'release', decidedAt: now - 50 * minute })))
   const points = before.flatMap(stage => stage.points)
   const base: RouteCase = {
-    stages, now, headState: 'working', personal: false, stops: [], clearances: cleared, submissions,
+    stages, now, headState: 'working', personal: false, stops: [], clearances: cleared, consent: 'signed', submissions,
     releases: points.filter(point => point.kind === 'hold').flatMap(point => ['hanne', 'marit'].slice(0, point.signersNeeded ?? 1).map(by => released(point.code, by))),
     calls: points.filter(point => point.kind === 'witness').map(point => ({ point: point.code, toldAt: now - 90 * minute, waitUntil: now - 60 * minute, seenAt: null, seenBy: null })),
   }
