@@ -32,6 +32,6 @@ export function useTable<Row, Filter extends string = never>(path: string, { sor
     return values.toString()
   })
   watch(query, text => void router.replace({ query: Object.fromEntries(new URLSearchParams(text)) }))
-  const pages = usePages<Row>(() => `${path}${query.value ? `?${query.value}` : ''}`)
+  const pages = usePages<Row>(() => [path, query.value].filter(Boolean).join(path.includes('?') ? '&' : '?'))
   return { ...pages, search, sort, sorts, filters: chosen }
 }

@@ -1,27 +1,40 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
-import type { Page, PersonView } from '#shared/contract/views'
+import type { z } from 'zod'
 import { BenchPlace } from '#server/db/entities/BenchPlace'
 import { User } from '#server/db/entities/User'
-import { Refusal } from '#server/utils/refusal'
+import { anywhere, keyset, type KeysetOrder } from '#server/utils/keyset'
+import type { peopleQuery } from '#shared/contract/office'
+import type { Page, PersonView } from '#shared/contract/views'
 
-/** Everybody with an account, by name, a page at a time. `after` is "<name>|<id>" of the last one seen. */
-export async function listPeople(em: EntityManager, page: { after?: string, limit: number }): Promise<Page<PersonView>> {
-  const [, name, id] = /^(.+)\|([0-9a-f-]{36})$/.exec(page.after ?? '') ?? []
-  if (page.after !== undefined && !id) throw new Refusal('page_unknown')
-  const past = name && id ? { $or: [{ name: { $gt: name } }, { name, id: { $gt: id } }] } : {}
-  const people = await em.find(User, past, { orderBy: { name: 'asc', id: 'asc' }, limit: page.limit + 1 })
-  const shown = people.slice(0, page.limit)
-  const places = await em.find(BenchPlace, { person: { $in: shown.map(person => person.id) } }, { populate: ['cohort'] })
-  const last = shown.at(-1)
-  return {
-    items: shown.map(person => ({
-      id: person.id,
-      name: person.name,
-      email: person.email,
-      roles: person.roles,
-      cohorts: places.filter(place => place.person.id === person.id).map(place => place.cohort.get().name),
-      invited: person.passwordHash === null,
-    })),
-    next: people.length > page.limit && last ? `${last.name}|${last.id}` : null,
+const orders: Record<z.output<typeof peopleQuery>['sort'], KeysetOrder> = {
+  name: { by: 'u.name', direction: 'asc', type: 'text' },
+  newest: { by: 'u.created_at', direction: 'desc', type: 'timestamptz' },
+}
+
+/** Everybody with an account, found by name or e-mail, a page at a time. @throws {Refusal} page_unknown */
+export async function listPeople(em: EntityManager, query: z.output<typeof peopleQuery>): Promise<Page<PersonView>> {
+  const page = keyset(orders[query.sort], 'u.id', query.after)
+  const where = [page.where]
+  const values: unknown[] = [...page.values]
+  if (query.search) {
+    where.push('(u.name ilike ? or u.email ilike ?)')
+    values.push(anywhere(query.search), anywhere(query.search))
   }
+  if (query.role) {
+    where.push('? = any(u.roles)')
+    values.push(query.role)
+  }
+  const rows = await em.getConnection().execute<{ id: string, page_key: string }[]>(
+    `select u.id, ${page.select} from app_user u where ${where.join(' and ')} order by ${page.orderBy} limit ?`, [...values, query.limit + 1])
+  const { rows: shown, next } = page.cut(rows, query.limit)
+  const ids = shown.map(row => row.id)
+  const people = new Map((await em.find(User, { id: { $in: ids } })).map(person => [person.id, person]))
+  const places = await em.find(BenchPlace, { person: { $in: ids } }, { populate: ['cohort'] })
+  const items = ids.flatMap((id): PersonView[] => {
+    const person = people.get(id)
+    return person
+      ? [{ id, name: person.name, email: person.email, roles: person.roles, cohorts: places.filter(place => place.person?.id === id).map(place => place.cohort.$.name), invited: person.passwordHash === null }]
+      : []
+  })
+  return { items, next }
 }

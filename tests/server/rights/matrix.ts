@@ -95,6 +95,12 @@ export const matrix: readonly MatrixRow[] = [
 
   // people and work
   row('GET /api/people', { ...noRole, admin: 'yes' }, at('/api/people')),
+  row('GET /api/people/{id}', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/people/${world.bettany.id}` })),
+  row('POST /api/people/{id}/roles', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/people/${world.bettany.id}/roles`, body: { roles: ['student'] } })),
+  row('POST /api/people/{id}/name', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/people/${world.bettany.id}/name`, body: { name: 'Bettany Crake' } })),
+  row('POST /api/people/{id}/end-sessions', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/people/${world.stranger.id}/end-sessions`, body: {} })),
+  row('POST /api/people/{id}/invite-again', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/people/${world.stranger.id}/invite-again`, body: {} })),
+  row('GET /api/audit', { ...noRole, 'instructor': 'yes', 'other instructor': 'yes', 'admin': 'yes', 'safety': 'yes' }, at('/api/audit')),
   row('POST /api/people/invitations', { ...noRole, admin: 'yes' }, async () => ({ path: '/api/people/invitations', body: { name: 'Wen Sallis', email: `${crypto.randomUUID()}@sallowbeck.example`, roles: ['student'] } })),
   row('GET /api/jobs/stuck', { ...noRole, admin: 'yes' }, at('/api/jobs/stuck')),
   row('POST /api/jobs/{id}/rerun', { ...noRole, admin: 404 }, at('/api/jobs/00000000-0000-4000-8000-000000000000/rerun', {})),

@@ -23,6 +23,8 @@ export interface World {
   school: TestSchool
   bettany: Actor
   freya: Actor
+  /** Somebody invited who never came. */
+  stranger: Actor
   /** A head of this person walked up to op 70, Bowl. */
   head: (owner: Actor) => Promise<string>
   /** A draft of its first bowl. */
@@ -48,6 +50,7 @@ export interface World {
 export async function makeWorld(harness: Harness, school: TestSchool): Promise<World> {
   const bettany = await school.person('Bettany Crake', ['student'])
   const freya = await school.person('Freya Dunmallet', ['student'])
+  const stranger = await school.person('Tomek Oake', ['student'])
   await school.em().transactional(async (tx) => {
     tx.persist(tx.create(BenchPlace, { cohort: tx.getReference(Cohort, school.cohortId), person: tx.getReference(User, freya.id), state: 'finished', slot: null, createdAt: school.now(), finishedAt: school.now() }))
   })
@@ -87,7 +90,7 @@ export async function makeWorld(harness: Harness, school: TestSchool): Promise<W
   }
 
   return {
-    harness, school, bettany, freya, upload,
+    harness, school, bettany, freya, stranger, upload,
     async lesson() {
       count += 1
       const slug = `lesson-${count}`
