@@ -1,0 +1,27 @@
+const dayMs = 86_400_000
+
+/** The day's number since 1970-01-01. @throws {RangeError} when it is no day of the calendar */
+function dayNumber(day: string): number {
+  const ms = /^\d{4}-\d{2}-\d{2}$/.test(day) ? Date.parse(`${day}T00:00:00Z`) : Number.NaN
+  // JavaScript reads 31 June as 1 July; a refund should not.
+  if (!Number.isFinite(ms) || new Date(ms).toISOString().slice(0, 10) !== day) throw new RangeError(`"${day}" is not a day of the calendar`)
+  return ms / dayMs
+}
+
+/**
+ * Calendar days from one day to another, negative when it lies before. Days as "2026-09-21"; no clock time and no zone has a part in
+ * it, so a change to summer time is never a day more or less.
+ *
+ * @throws {RangeError} when either is no day of the calendar
+ * @example
+ * daysBetween('2025-08-13', '2025-09-22') // => 40
+ */
+export function daysBetween(from: string, to: string): number {
+  return dayNumber(to) - dayNumber(from)
+}
+
+/** The day so many days later, or earlier when negative. @throws {RangeError} when it is no day, or not a whole number of days */
+export function dayAfter(day: string, days: number): string {
+  if (!Number.isInteger(days)) throw new RangeError('dayAfter requires a whole number of days')
+  return new Date((dayNumber(day) + days) * dayMs).toISOString().slice(0, 10)
+}
