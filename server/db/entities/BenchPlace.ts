@@ -39,7 +39,7 @@ export const BenchPlace = defineEntity({
     offersLetGo: p.integer().default(0),
     depositPaidAt: instant().nullable(),
     confirmedAt: instant().nullable(),
-    /** Id of the place this one was moved from (a foreign key in the database). A place is moved once. */
+    /** Id of the place this one was moved from A place is moved once. */
     movedFromId: p.uuid().nullable(),
     endedAt: instant().nullable(),
     /** Who ended it and why: `student`, `school`, `illness`, `unsafe-work`, `not-paid`. */
@@ -52,7 +52,12 @@ export const BenchPlace = defineEntity({
     createdAt: instant().onCreate(() => new Date()),
   },
   uniques: [{ properties: ['cohort', 'listNumber'] }],
+  checks: [
+    { name: 'bench_place_bench_taken', expression: `(state <> ALL (ARRAY['offered'::text, 'deposit-paid'::text, 'confirmed'::text, 'here'::text])) OR (slot IS NOT NULL)` },
+    { name: 'bench_place_bench_number', expression: '(slot IS NULL) OR (slot >= 1)' },
+  ],
   indexes: [
+    { name: 'bench_place_moved_once', expression: `create unique index "bench_place_moved_once" on "bench_place" ("moved_from_id") where "moved_from_id" is not null` },
     { properties: ['state', 'heldUntil'] },
     { properties: ['email'] },
     { properties: ['person'] },

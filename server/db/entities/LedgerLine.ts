@@ -32,6 +32,7 @@ export const LedgerLine = defineEntity({
     at: instant(),
     writtenAt: instant(),
   },
+  checks: [{ name: 'ledger_line_sign', expression: `(amount_minor <> 0) AND ((amount_minor > 0) = (kind = ANY (ARRAY['card'::text, 'bank'::text, 'moved-in'::text])))` }],
   uniques: [{ properties: ['kind', 'reference'] }],
   indexes: [{ properties: ['place'] }, { properties: ['at', 'id'] }],
 })

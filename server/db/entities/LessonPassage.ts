@@ -21,7 +21,7 @@ export const LessonPassage = defineEntity({
     clip: () => p.manyToOne(MediaAsset).ref().nullable(),
     /** Where in the clip the caption begins, milliseconds. */
     fromMs: p.integer().nullable(),
-    words: p.text().columnType('tsvector').generated(`(setweight(to_tsvector('english', heading), 'A') || setweight(to_tsvector('english', body), 'B')) stored`).nullable().hidden().lazy(),
+    words: p.text().columnType('tsvector').generated(`(setweight(to_tsvector('english'::regconfig, heading), 'A'::"char") || setweight(to_tsvector('english'::regconfig, body), 'B'::"char")) stored`).nullable().hidden().lazy(),
   },
   indexes: [
     { properties: ['lesson', 'ordinal'] },

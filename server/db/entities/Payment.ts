@@ -23,6 +23,7 @@ export const Payment = defineEntity({
     expiresAt: instant(),
     paidAt: instant().nullable(),
   },
+  checks: [{ name: 'payment_amount', expression: 'amount_minor > 0' }],
   indexes: [
     { properties: ['state', 'createdAt'] },
     { name: 'payment_one_open', expression: `create unique index "payment_one_open" on "payment" ("place_id", "purpose") where "state" in ('begun', 'open')` },

@@ -33,6 +33,7 @@ export const Refund = defineEntity({
     providerId: p.string().length(255).unique().nullable(),
     problem: p.text().nullable(),
   },
+  checks: [{ name: 'refund_amount', expression: 'amount_minor > 0' }],
   indexes: [{ properties: ['place'] }, { properties: ['state', 'decidedAt'] }],
 })
 export type Refund = InferEntity<typeof Refund>

@@ -3,7 +3,6 @@ import { Migration } from '@mikro-orm/migrations'
 /** What the schema builder cannot say: a cohort never has more people than benches, and money is never rewritten. */
 export class Migration20261201000100_place_and_money_guards extends Migration {
   override async up(): Promise<void> {
-    this.addSql(`alter table "bench_place" add constraint "bench_place_moved_from_foreign" foreign key ("moved_from_id") references "bench_place" ("id");`)
     this.addSql(`create unique index "bench_place_moved_once" on "bench_place" ("moved_from_id") where "moved_from_id" is not null;`)
     this.addSql(`alter table "bench_place" add constraint "bench_place_bench_taken" check ("state" not in ('offered', 'deposit-paid', 'confirmed', 'here') or "slot" is not null);`)
     this.addSql(`alter table "bench_place" add constraint "bench_place_bench_number" check ("slot" is null or "slot" >= 1);`)
