@@ -1,0 +1,53 @@
+import { computed, onBeforeUnmount, ref, shallowRef, watch } from 'vue'
+import type { Failure } from '#shared/contract/failure'
+import type { SearchHit } from '#shared/contract/lessons'
+import { useApi } from './useApi'
+
+const pauseMs = 250
+
+/** Searching the lessons and what is said in their films, as it is typed. The words stand in the address, so a result can be gone back to. */
+export function useSearch() {
+  const route = useRoute()
+  const router = useRouter()
+  const api = useApi()
+  const q = ref(typeof route.query.q === 'string' ? route.query.q : '')
+  const hits = shallowRef<SearchHit[]>([])
+  /** What the hits shown were found for; null before any search. */
+  const foundFor = ref<string | null>(null)
+  const busy = ref(false)
+  const failure = ref<Failure | null>(null)
+  let timer: ReturnType<typeof setTimeout> | undefined
+  let turn = 0
+
+  async function search(): Promise<void> {
+    clearTimeout(timer)
+    const words = q.value.trim()
+    const mine = ++turn
+    void router.replace({ query: { ...route.query, q: words || undefined }, hash: route.hash })
+    if (words.length < 2) {
+      hits.value = []
+      foundFor.value = null
+      failure.value = null
+      busy.value = false
+      return
+    }
+    busy.value = true
+    const answer = await api.get<{ items: SearchHit[] } | SearchHit[]>(`/api/search?q=${encodeURIComponent(words)}`)
+    // A later search has overtaken this one.
+    if (mine !== turn) return
+    busy.value = false
+    failure.value = answer.ok ? null : answer.failure
+    if (!answer.ok) return
+    hits.value = Array.isArray(answer.value) ? answer.value : answer.value.items
+    foundFor.value = words
+  }
+
+  watch(q, () => {
+    clearTimeout(timer)
+    timer = setTimeout(() => void search(), pauseMs)
+  })
+  if (import.meta.client && q.value) void search()
+  onBeforeUnmount(() => clearTimeout(timer))
+  const searching = computed(() => q.value.trim().length >= 2)
+  return { q, hits, foundFor, busy, failure, searching, search }
+}
