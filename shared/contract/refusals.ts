@@ -112,6 +112,19 @@ export const refusals = {
   roster_unreadable: [422, 'The list cannot be read. Its first line names the columns: name, email and, if there are any, sponsor.'],
   roster_has_problems: [422, 'Some rows of the list cannot be taken. Put them right, then look at it again.'],
   roster_changed: [409, 'The list or the cohort changed since you looked. Look at it again.'],
+  // card payments
+  payments_unreachable: [503, 'The card processor does not answer at the moment. Nothing was taken; try again in a minute.'],
+  signature_invalid: [400, 'This message is not signed by the card processor, was changed on its way, or is too old.'],
+  nothing_to_pay: [409, 'There is nothing to pay for this place.'],
+  checkout_refused: [409, 'The card processor would not open a payment. Nothing was taken; tell the office.'],
+  bank_reference_used: [409, 'Money with this bank reference is written down already.'],
+  // refunds and receipts
+  refund_too_much: [422, 'That is more than the school holds of this place.'],
+  refund_not_found: [404, 'There is no such refund that you may see.'],
+  refund_not_open: [409, 'This refund went, or is on its way. Look at the list again.'],
+  day_to_come: [422, 'That day is still to come.'],
+  receipt_not_found: [404, 'There is no such receipt that you may see.'],
+  receipt_not_ready: [409, 'The receipt is being made. Look again in a minute.'],
   // people
   person_not_found: [404, 'There is no such person.'],
   own_admin_role: [409, 'You cannot take the admin role from yourself. Another admin can.'],
