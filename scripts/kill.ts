@@ -84,6 +84,7 @@ async function ownStack(settings: ReturnType<typeof readSettings>): Promise<OwnS
     ...process.env,
     AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: 'true', NODE_ENV: 'production', AUTH_ORIGIN: `${origin}/api/auth`, NUXT_AUTH_SECRET: secrets.authSecret, NUXT_DATABASE_URL: databaseUrl,
     NUXT_STORAGE_ENDPOINT: s3.url, NUXT_STORAGE_PUBLIC_ENDPOINT: s3.url, NUXT_STORAGE_BUCKET: 'evidence', NUXT_STORAGE_ACCESS_KEY: credentials.accessKeyId, NUXT_STORAGE_SECRET_KEY: credentials.secretAccessKey,
+    NUXT_PAY_KEY: 'sk_test_nobody_pays', NUXT_PAY_WEBHOOK_SECRET: 'whsec_nobody_pays', NUXT_PAY_ENDPOINT: 'http://127.0.0.1:9',
     NUXT_MAIL_URL: mail.smtpUrl, NUXT_MAIL_FROM: 'Sallowbeck <school@sallowbeck.example>', NUXT_PUBLIC_URL: origin,
   }
   const app = await startApp(readConfig({ ...env, NUXT_ROLE: 'web' }))

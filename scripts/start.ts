@@ -70,6 +70,7 @@ await runCommand(async () => {
       '',
       `Witness Mark is at ${url}   (ready in ${((performance.now() - began) / 1000).toFixed(1)} s)`,
       ...(standIns.mail ? [`Its mail is at     ${standIns.mail.pageUrl}`] : []),
+      ...(standIns.pay ? [`Cards are paid at  ${standIns.pay.url}   (nothing is taken)`] : []),
       '',
       'Sign in as <first name>@sallowbeck.example with the password slow-hands-true-numbers',
       '  imre, bettany (students)   hanne (lead instructor)   and everybody else of the school',

@@ -3,7 +3,7 @@ import { existsSync, mkdirSync, readFileSync, renameSync, writeFileSync } from '
 import { join } from 'node:path'
 import { Problem } from './problem'
 
-const names = ['authSecret', 'databasePassword', 'databaseAdminPassword', 'storageAccessKey', 'storageSecretKey'] as const
+const names = ['authSecret', 'databasePassword', 'databaseAdminPassword', 'storageAccessKey', 'storageSecretKey', 'payKey', 'payWebhookSecret'] as const
 
 export type Secrets = Record<typeof names[number], string>
 

@@ -12,8 +12,9 @@ export type Settings = {
   storagePort: number
   mailPort: number
   mailPagePort: number
+  payPort: number
   /** Addresses of services that are not ours to start; null where the stand-in does. */
-  given: { databaseUrl: string | null, storageEndpoint: string | null, mailUrl: string | null }
+  given: { databaseUrl: string | null, storageEndpoint: string | null, mailUrl: string | null, payKey: string | null }
 }
 
 type Env = Readonly<Record<string, string | undefined>>
@@ -39,6 +40,7 @@ export function readSettings(env: Env): Settings {
     storagePort: port('STORAGE_PORT', 9000),
     mailPort: port('MAIL_PORT', 2525),
     mailPagePort: port('MAIL_PAGE_PORT', 8025),
-    given: { databaseUrl: given('NUXT_DATABASE_URL'), storageEndpoint: given('NUXT_STORAGE_ENDPOINT'), mailUrl: given('NUXT_MAIL_URL') },
+    payPort: port('PAY_PORT', 8030),
+    given: { databaseUrl: given('NUXT_DATABASE_URL'), storageEndpoint: given('NUXT_STORAGE_ENDPOINT'), mailUrl: given('NUXT_MAIL_URL'), payKey: given('NUXT_PAY_KEY') },
   }
 }

@@ -1,5 +1,6 @@
 import { join } from 'node:path'
 import { startMail, type MailStandIn } from '../stand-ins/mail/start-mail'
+import { startPay, type PayStandIn } from '../stand-ins/pay/start-pay'
 import { startS3, type S3StandIn } from '../stand-ins/s3/start-s3'
 import { Problem } from './problem'
 import type { ProcessMark } from './process-record'
@@ -17,19 +18,20 @@ export type StackOptions = {
   storagePort: number
   mailPort: number
   mailPagePort: number
+  payPort: number
   /** Real services to use instead of the stand-ins. */
-  given?: { storageEndpoint: string | null, mailUrl: string | null }
+  given?: { storageEndpoint: string | null, mailUrl: string | null, payKey: string | null }
   env: Readonly<Record<string, string | undefined>>
   say: (line: string) => void
   onChange?: (running: ProcessMark[]) => void
 }
 
-export type StandIns = { s3: S3StandIn | null, mail: MailStandIn | null, close: () => Promise<void> }
+export type StandIns = { s3: S3StandIn | null, mail: MailStandIn | null, pay: PayStandIn | null, close: () => Promise<void> }
 export type Stack = { url: string, web: Supervised, worker: Supervised, stop: () => Promise<void> }
 
 const bucket = 'witness-mark'
 
-/** Storage and mail for this machine, where no real ones are given. */
+/** Storage, mail and card payments for this machine, where no real ones are given. */
 export async function startStandIns(options: StackOptions): Promise<StandIns> {
   const { dataDir, secrets, host, given } = options
   const listening = (name: string, variable: string) => (thrown: unknown): never => {
@@ -48,7 +50,16 @@ export async function startStandIns(options: StackOptions): Promise<StandIns> {
         await s3?.close()
         return listening('mail', 'MAIL_PORT or MAIL_PAGE_PORT')(thrown)
       })
-  return { s3, mail, close: async () => void await Promise.all([s3?.close(), mail?.close()]) }
+  const pay = given?.payKey
+    ? null
+    : await startPay({
+        dir: join(dataDir, 'pay'), host, port: options.payPort, key: secrets.payKey, webhookSecret: secrets.payWebhookSecret,
+        webhookUrl: `${webUrl(options)}/api/payments/webhook`,
+      }).catch(async (thrown: unknown) => {
+        await Promise.all([s3?.close(), mail?.close()])
+        return listening('card payment', 'PAY_PORT')(thrown)
+      })
+  return { s3, mail, pay, close: async () => void await Promise.all([s3?.close(), mail?.close(), pay?.close()]) }
 }
 
 const webUrl = ({ host, webPort }: Pick<StackOptions, 'host' | 'webPort'>) => `http://${host.includes(':') ? `[${host}]` : host}:${webPort}`
@@ -72,6 +83,10 @@ export function applicationEnv(options: StackOptions): Record<string, string | u
     NUXT_STORAGE_SECRET_KEY: env.NUXT_STORAGE_SECRET_KEY || secrets.storageSecretKey,
     NUXT_MAIL_URL: env.NUXT_MAIL_URL || `smtp://${host}:${options.mailPort}`,
     NUXT_MAIL_FROM: env.NUXT_MAIL_FROM || 'Sallowbeck <school@sallowbeck.example>',
+    // A key of one's own goes with the processor's own address; the stand-in's key with the stand-in.
+    NUXT_PAY_KEY: env.NUXT_PAY_KEY || secrets.payKey,
+    NUXT_PAY_WEBHOOK_SECRET: env.NUXT_PAY_WEBHOOK_SECRET || secrets.payWebhookSecret,
+    NUXT_PAY_ENDPOINT: env.NUXT_PAY_ENDPOINT || (env.NUXT_PAY_KEY ? '' : `http://${host}:${options.payPort}`),
     NUXT_PUBLIC_URL: url,
   }
 }

@@ -3,6 +3,7 @@ import type PgBoss from 'pg-boss'
 import type { Clock } from '../adapters/clock/clock'
 import type { Imaging } from '../adapters/imaging/imaging'
 import type { MailSender } from '../adapters/mail/mail'
+import type { Payments } from '../adapters/payments/payments'
 import type { Storage } from '../adapters/storage/storage'
 import type { Config } from './config'
 import { readConfig } from './config'
@@ -17,6 +18,7 @@ export interface App {
   boss: PgBoss
   storage: Storage
   mail: MailSender
+  payments: Payments
   clock: Clock
   imaging: Imaging
   signals: Signals

@@ -16,6 +16,9 @@ const schema = z.object({
   NUXT_STORAGE_SECRET_KEY: z.string().min(1),
   NUXT_MAIL_URL: z.string().regex(/^smtps?:\/\//, 'must be an smtp:// address'),
   NUXT_MAIL_FROM: z.string().min(3),
+  NUXT_PAY_KEY: z.string().min(8),
+  NUXT_PAY_WEBHOOK_SECRET: z.string().min(8),
+  NUXT_PAY_ENDPOINT: z.union([z.literal(''), url]).optional(),
   NUXT_PUBLIC_URL: url,
 })
 
@@ -27,6 +30,8 @@ export interface Config {
   migrateOnStart: boolean
   storage: { endpoint: string, publicEndpoint: string, region: string, bucket: string, accessKey: string, secretKey: string }
   mail: { url: string, from: string }
+  /** `endpoint`: null for the card processor's own address. */
+  pay: { key: string, webhookSecret: string, endpoint: string | null }
   publicUrl: string
 }
 
@@ -56,6 +61,7 @@ export function readConfig(env: NodeJS.ProcessEnv): Config {
       secretKey: value.NUXT_STORAGE_SECRET_KEY,
     },
     mail: { url: value.NUXT_MAIL_URL, from: value.NUXT_MAIL_FROM },
+    pay: { key: value.NUXT_PAY_KEY, webhookSecret: value.NUXT_PAY_WEBHOOK_SECRET, endpoint: value.NUXT_PAY_ENDPOINT || null },
     publicUrl: value.NUXT_PUBLIC_URL.replace(/\/$/, ''),
   }
 }

@@ -2,6 +2,7 @@ import { MikroORM } from '@mikro-orm/postgresql'
 import { createClock } from '../adapters/clock/clock'
 import { sharpImaging } from '../adapters/imaging/sharp'
 import { smtpMail } from '../adapters/mail/smtp'
+import { stripePayments } from '../adapters/payments/stripe'
 import { s3Storage } from '../adapters/storage/s3'
 import { dbConfig } from '../db/config'
 import { SchoolSetting } from '../db/entities/SchoolSetting'
@@ -27,6 +28,7 @@ export async function startApp(config: Config): Promise<App> {
     boss,
     storage: s3Storage(config.storage),
     mail: smtpMail(config.mail),
+    payments: stripePayments(config.pay),
     clock: createClock(demo ? demo.value as { demoNow: string, seededAt: string } : null),
     imaging: sharpImaging(),
     signals,

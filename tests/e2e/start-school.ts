@@ -20,6 +20,7 @@ export type School = {
   stack: Stack
   s3: NonNullable<StandIns['s3']>
   mail: NonNullable<StandIns['mail']>
+  pay: NonNullable<StandIns['pay']>
   databaseUrl: string
   /** Settings for a storage client of the test's own. */
   storage: S3Settings
@@ -44,10 +45,10 @@ export async function startSchool(name: string, until: string | null): Promise<S
   await startCluster(cluster, say)
   await ensureDatabase(cluster, { ...owner, mayCreateDatabases: true }, 'witness_mark')
 
-  const [webPort, storagePort, mailPort, mailPagePort] = await freePorts(4)
+  const [webPort, storagePort, mailPort, mailPagePort, payPort] = await freePorts(5)
   const options = (dir: string): StackOptions => ({
     dataDir: dir, secrets, databaseUrl: '', host: '127.0.0.1', say, env: { PATH: process.env.PATH, HOME: process.env.HOME },
-    webPort: webPort ?? 0, storagePort: storagePort ?? 0, mailPort: mailPort ?? 0, mailPagePort: mailPagePort ?? 0,
+    webPort: webPort ?? 0, storagePort: storagePort ?? 0, mailPort: mailPort ?? 0, mailPagePort: mailPagePort ?? 0, payPort: payPort ?? 0,
   })
 
   const instant = (until ?? 'demo').toLowerCase().replace(/[^a-z0-9]+/g, '_')
@@ -79,15 +80,15 @@ export async function startSchool(name: string, until: string | null): Promise<S
   cpSync(kept, dir, { recursive: true })
   await query(databaseUrl(cluster, cluster.admin, 'postgres'), `CREATE DATABASE "${database}" TEMPLATE "${template}" STRATEGY file_copy OWNER witness`)
   const own = { ...options(dir), databaseUrl: databaseUrl(cluster, owner, database) }
-  const { s3, mail, close } = await startStandIns(own)
-  if (!s3 || !mail) throw new Error('a test\'s school has stand-ins')
+  const { s3, mail, pay, close } = await startStandIns(own)
+  if (!s3 || !mail || !pay) throw new Error('a test\'s school has stand-ins')
   const stack = await startStack(own).catch(async (thrown: unknown) => {
     await close()
     throw thrown
   })
   const env = applicationEnv(own)
   return {
-    url: stack.url, stack, s3, mail, databaseUrl: own.databaseUrl,
+    url: stack.url, stack, s3, mail, pay, databaseUrl: own.databaseUrl,
     storage: {
       endpoint: s3.url, publicEndpoint: s3.url, region: env.NUXT_STORAGE_REGION ?? '', bucket: env.NUXT_STORAGE_BUCKET ?? '',
       accessKey: secrets.storageAccessKey, secretKey: secrets.storageSecretKey,

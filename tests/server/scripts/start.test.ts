@@ -37,7 +37,7 @@ describe('the demo school', () => {
 
 describe('settings', () => {
   it('take every number from the environment', () => {
-    expect(readSettings({ PORT: '3456', PGPORT: '5555', STORAGE_PORT: '9999', MAIL_PORT: '2222', MAIL_PAGE_PORT: '8888', TEST_PGPORT: '5556' })).toMatchObject({ webPort: 3456, databasePort: 5555, storagePort: 9999, mailPort: 2222, mailPagePort: 8888, testDatabasePort: 5556 })
+    expect(readSettings({ PORT: '3456', PGPORT: '5555', STORAGE_PORT: '9999', MAIL_PORT: '2222', MAIL_PAGE_PORT: '8888', PAY_PORT: '7777', TEST_PGPORT: '5556' })).toMatchObject({ webPort: 3456, databasePort: 5555, storagePort: 9999, mailPort: 2222, mailPagePort: 8888, payPort: 7777, testDatabasePort: 5556 })
   })
   it.each(['0', '65536', '30x', '-1', '3e3'])('refuse %s by name', (PORT) => {
     expect(() => readSettings({ PORT })).toThrow(/^PORT should be a number/)
@@ -49,7 +49,7 @@ describe('secrets', () => {
     const first = readOrMakeSecrets(dir)
     expect(readOrMakeSecrets(dir)).toEqual(first)
     expect(first.authSecret.length).toBeGreaterThanOrEqual(64)
-    expect(new Set(Object.values(first)).size).toBe(5)
+    expect(new Set(Object.values(first)).size).toBe(7)
     expect(statSync(join(dir, 'secrets.json')).mode & 0o777).toBe(0o600)
   })
   it('are not replaced when they cannot be read', () => {
