@@ -14,7 +14,7 @@ export function useMe() {
   /** Where this person starts. */
   const home = computed(() => {
     if (is('instructor')) return '/review'
-    if (is('admin')) return '/people'
+    if (is('admin')) return '/places'
     if (is('safety')) return '/shop-board'
     if (me.value && menuRolesOf(me.value).every(role => role === 'alumni')) return '/shelf'
     return me.value ? '/bench' : '/login'
