@@ -6,8 +6,11 @@ export const queues = {
   'score-submission': { policy: 'standard', retryLimit: 8, retryDelay: 1, retryBackoff: true, expireInSeconds: 8 },
   'prepare-photo': { policy: 'standard', retryLimit: 6, retryDelay: 2, retryBackoff: true, expireInSeconds: 120 },
   'hash-media': { policy: 'standard', retryLimit: 6, retryDelay: 10, retryBackoff: true, expireInSeconds: 1800 },
+  'send-refund': { policy: 'standard', retryLimit: 20, retryDelay: 5, retryBackoff: true, expireInSeconds: 120 },
+  'make-receipt': { policy: 'standard', retryLimit: 12, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'send-mail': { policy: 'standard', retryLimit: 12, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'seal-audit': { policy: 'short', retryLimit: 3, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
+  'send-reminders': { policy: 'short', retryLimit: 5, retryDelay: 60, retryBackoff: true, expireInSeconds: 600 },
   'clear-uploads': { policy: 'short', retryLimit: 3, retryDelay: 60, retryBackoff: true, expireInSeconds: 600 },
 } as const
 
@@ -18,7 +21,10 @@ export interface JobData {
   'score-submission': { submissionId: string }
   'prepare-photo': { photoId: string }
   'hash-media': { mediaId: string }
+  'send-refund': { refundId: string }
+  'make-receipt': { receiptId: string }
   'send-mail': { mailId: string }
   'seal-audit': { reason: string }
+  'send-reminders': Record<string, never>
   'clear-uploads': Record<string, never>
 }
