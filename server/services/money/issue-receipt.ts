@@ -6,7 +6,7 @@ import { enqueue } from '#server/utils/enqueue'
 import { recordEvent } from '#server/utils/record-event'
 
 /** Held until the transaction ends: the next number is given when this one is kept or given up, so that none is left out. */
-const numbersLock = 7240192
+const numbersLock = 7_240_193
 
 /**
  * Gives a ledger line of money that came in the next receipt number, and makes the paper and its letter a job. In the caller's
