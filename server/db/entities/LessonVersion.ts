@@ -14,6 +14,8 @@ export const LessonVersion = defineEntity({
     title: p.string().length(160),
     /** The published document, checked against the lesson schema. */
     document: p.json<LessonDocument>().trackChanges(false),
+    /** Reading time. */
+    minutes: p.integer(),
     whatChanged: p.text(),
     why: p.text(),
     /** Null for the starter curriculum. */
@@ -21,5 +23,7 @@ export const LessonVersion = defineEntity({
     publishedAt: instant(),
   },
   uniques: [{ properties: ['lesson', 'version'] }],
+  // Which versions show a picture or film.
+  indexes: [{ name: 'lesson_version_document', expression: 'create index "lesson_version_document" on "lesson_version" using gin ("document")' }],
 })
 export type LessonVersion = InferEntity<typeof LessonVersion>

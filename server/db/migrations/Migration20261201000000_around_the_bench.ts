@@ -33,7 +33,9 @@ export class Migration20261201000000_around_the_bench extends Migration {
     this.addSql(`create table "lesson_passage" ("id" uuid not null, "lesson_id" uuid not null, "ordinal" int not null, "kind" text check ("kind" in ('text', 'caption')) not null, "anchor" varchar(120) not null, "heading" text not null, "body" text not null, "clip_id" uuid null, "from_ms" int null, "words" tsvector generated always as (setweight(to_tsvector('english'::regconfig, heading), 'A'::"char") || setweight(to_tsvector('english'::regconfig, body), 'B'::"char")) stored null, constraint "lesson_passage_pkey" primary key ("id"));`);
     this.addSql(`create index "lesson_passage_lesson_id_ordinal_index" on "lesson_passage" ("lesson_id", "ordinal");`);
     this.addSql(`create index "lesson_passage_words" on "lesson_passage" using gin ("words");`);
-    this.addSql(`create index "lesson_passage_letters" on "lesson_passage" using gin ("body" gin_trgm_ops);`);
+
+    this.addSql(`create table "lesson_word" ("word" varchar(40) not null, constraint "lesson_word_pkey" primary key ("word"));`);
+    this.addSql(`create index "lesson_word_letters" on "lesson_word" using gin ("word" gin_trgm_ops);`);
 
     this.addSql(`create table "lesson_progress" ("id" uuid not null, "person_id" uuid not null, "lesson_id" uuid not null, "anchor" varchar(120) null, "kept_id" uuid null, "finished_at" timestamptz null, "updated_at" timestamptz not null, constraint "lesson_progress_pkey" primary key ("id"));`);
     this.addSql(`alter table "lesson_progress" add constraint "lesson_progress_person_id_lesson_id_unique" unique ("person_id", "lesson_id");`);
@@ -41,7 +43,7 @@ export class Migration20261201000000_around_the_bench extends Migration {
     this.addSql(`create table "lesson_note" ("id" uuid not null, "person_id" uuid not null, "lesson_id" uuid not null, "anchor" varchar(120) null, "text" text not null, "created_at" timestamptz not null, "updated_at" timestamptz not null, constraint "lesson_note_pkey" primary key ("id"));`);
     this.addSql(`create index "lesson_note_person_id_lesson_id_index" on "lesson_note" ("person_id", "lesson_id");`);
 
-    this.addSql(`create table "lesson_draft" ("id" uuid not null, "lesson_id" uuid not null, "revision" int not null, "title" varchar(160) not null, "document" jsonb not null, "saved_by_id" uuid not null, "saved_at" timestamptz not null, constraint "lesson_draft_pkey" primary key ("id"));`);
+    this.addSql(`create table "lesson_draft" ("id" uuid not null, "lesson_id" uuid not null, "title" varchar(160) not null, "document" jsonb not null, "saved_by_id" uuid not null, "saved_at" timestamptz not null, constraint "lesson_draft_pkey" primary key ("id"));`);
     this.addSql(`alter table "lesson_draft" add constraint "lesson_draft_lesson_id_unique" unique ("lesson_id");`);
 
     this.addSql(`create table "consent_text" ("id" uuid not null, "version" int not null, "clauses" jsonb not null, "choices" jsonb not null, "stands_from" int not null, "saved_by_id" uuid null, "saved_at" timestamptz not null, constraint "consent_text_pkey" primary key ("id"));`);
@@ -139,16 +141,18 @@ export class Migration20261201000000_around_the_bench extends Migration {
     this.addSql(`alter table "lesson" add column "module_id" uuid null;`);
     this.addSql(`update "lesson" set "module_id" = "course_module"."id" from "course_module" where "course_module"."title" = "lesson"."module";`);
     this.addSql(`alter table "lesson" alter column "module_id" set not null;`);
+    this.addSql(`alter table "lesson" add column "revision" int not null default 0;`);
     this.addSql(`alter table "lesson" drop column "module";`);
     this.addSql(`alter table "lesson" add constraint "lesson_module_id_foreign" foreign key ("module_id") references "course_module" ("id") on update cascade;`);
 
     this.addSql(`alter table "mail" add column "attachments" jsonb null;`);
 
-    this.addSql(`alter table "lesson_version" add column "title" varchar(160) not null default '', add column "document" jsonb not null default '{"type":"doc","content":[]}', add column "what_changed" text not null default '', add column "why" text not null default '', add column "published_by_id" uuid null;`);
+    this.addSql(`alter table "lesson_version" add column "title" varchar(160) not null default '', add column "document" jsonb not null default '{"type":"doc","content":[]}', add column "minutes" int not null default 1, add column "what_changed" text not null default '', add column "why" text not null default '', add column "published_by_id" uuid null;`);
     this.addSql(`alter table "lesson_version" disable trigger "lesson_version_never_changes";`);
     this.addSql(`update "lesson_version" set "title" = (select "title" from "lesson" where "lesson"."id" = "lesson_id"), "document" = jsonb_build_object('type', 'doc', 'content', coalesce((select jsonb_agg(jsonb_build_object('type', 'paragraph', 'content', jsonb_build_array(jsonb_build_object('type', 'text', 'text', "words")))) from regexp_split_to_table("markdown", '\\n\\s*\\n') as "words" where "words" <> ''), '[]'::jsonb));`);
     this.addSql(`alter table "lesson_version" enable trigger "lesson_version_never_changes";`);
-    this.addSql(`alter table "lesson_version" drop column "markdown", alter column "title" drop default, alter column "document" drop default, alter column "what_changed" drop default, alter column "why" drop default;`);
+    this.addSql(`alter table "lesson_version" drop column "markdown", alter column "title" drop default, alter column "document" drop default, alter column "minutes" drop default, alter column "what_changed" drop default, alter column "why" drop default;`);
+    this.addSql(`create index "lesson_version_document" on "lesson_version" using gin ("document");`);
     this.addSql(`alter table "lesson_version" add constraint "lesson_version_published_by_id_foreign" foreign key ("published_by_id") references "app_user" ("id") on update cascade on delete set null;`);
     this.addSql(`alter table "bench_place" add column "name" varchar(120) not null default '', add column "email" varchar(254) not null default '', add column "note" text not null default '', add column "list_number" int null, add column "asked_at" timestamptz null, add column "opened_at" timestamptz null, add column "offered_at" timestamptz null, add column "held_until" timestamptz null, add column "offers_let_go" int not null default 0, add column "deposit_paid_at" timestamptz null, add column "confirmed_at" timestamptz null, add column "moved_from_id" uuid null, add column "ended_at" timestamptz null, add column "ended_because" varchar(40) null, add column "access_until" timestamptz null, add column "link_version" int not null default 1;`);
     this.addSql(`alter table "bench_place" alter column "person_id" drop default;`);

@@ -6,6 +6,8 @@ export interface TrackIssue { path: string, message: string }
 const mostCues = 5000
 const longestCue = 500
 const mostIssues = 50
+/** The package's own list lacks the semicolons, which then stay in the words. */
+const entities = { '&amp;': '&', '&lt;': '<', '&gt;': '>', '&lrm;': '\u200e', '&rlm;': '\u200f', '&nbsp;': '\u00a0' } as const
 const milli = (seconds: number) => Math.round(seconds * 1000)
 
 /**
@@ -17,7 +19,7 @@ const milli = (seconds: number) => Math.round(seconds * 1000)
 export function readTrack({ kind, vtt }: Pick<TrackInput, 'kind' | 'vtt'>, durationSeconds: number | null): { cues: Cue[], issues: TrackIssue[] } {
   // The package gives what it has to whoever asks for `exports`, which a bundler hands over as it is and Node as `default`.
   const { WebVTTParser } = 'default' in webvtt ? webvtt.default as typeof webvtt : webvtt
-  const { cues, errors } = new WebVTTParser().parse(vtt, kind)
+  const { cues, errors } = new WebVTTParser(entities).parse(vtt, kind)
   const named = errors.map(({ line, message }) => ({ line, message }))
   const lines = timingLines(vtt)
   const read = cues.map(({ startTime, endTime, tree }, index) => ({ fromMs: milli(startTime), toMs: milli(endTime), text: plain(tree.children), line: lines[index] ?? 1 }))

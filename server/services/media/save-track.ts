@@ -21,7 +21,7 @@ export async function saveTrack(em: EntityManager, actor: Actor, id: string, inp
     const asset = await tx.findOne(MediaAsset, { id }, { lockMode: LockMode.PESSIMISTIC_WRITE })
     if (!asset) throw new Refusal('media_not_found')
     if (asset.kind !== 'video') throw new Refusal('media_no_film')
-    const { cues, issues } = readTrack(input, asset.durationSeconds)
+    const { cues, issues } = readTrack(input, asset.durationSeconds ?? null)
     if (issues.length > 0) throw new Refusal('captions_invalid', undefined, { issues })
 
     const { kind, language, vtt } = input

@@ -15,14 +15,15 @@ export async function viewMedia(em: EntityManager, personId: string, assets: rea
   const people = await em.find(User, { id: { $in: assets.flatMap(asset => asset.addedBy?.id ?? []) } })
   return assets.map((asset) => {
     const position = positions.find(one => one.asset.id === asset.id)
-    const { id, kind, title, state, problem, contentType, bytes, width, height, durationSeconds } = asset
+    const { id, kind, title, state, contentType, bytes } = asset
     return {
-      id, kind, title, state, problem, contentType, bytes, width, height, durationSeconds,
+      id, kind, title, state, contentType, bytes,
+      problem: asset.problem ?? null, width: asset.width ?? null, height: asset.height ?? null, durationSeconds: asset.durationSeconds ?? null,
       fileUrl: `/api/media/${id}/file`,
       tracks: tracks.filter(one => one.asset.id === id).map(one => ({ kind: one.kind, language: one.language, url: `/api/media/${id}/tracks/${one.kind}.vtt?language=${one.language}`, cues: one.cues })),
       addedBy: people.find(one => one.id === asset.addedBy?.id)?.name ?? null,
       addedAt: asset.addedAt.toISOString(),
-      position: position ? { seconds: position.seconds, finished: position.finishedAt !== null } : null,
+      position: position ? { seconds: position.seconds, finished: (position.finishedAt ?? null) !== null } : null,
     }
   })
 }

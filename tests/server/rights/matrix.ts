@@ -1,5 +1,6 @@
 import type { Actor } from '#server/utils/actor'
 import { schoolRubric } from '../review/school'
+import { publishedFilm } from './published-film'
 import type { World } from './world'
 
 /*
@@ -108,6 +109,14 @@ export const matrix: readonly MatrixRow[] = [
   // what the school works by
   row('GET /api/lessons', signedIn, at('/api/lessons')),
   row('GET /api/lessons/{slug}', signedIn, async world => ({ path: `/api/lessons/${await world.lesson()}` })),
+  // pictures and films for lessons: read while one may read lessons, written by instructors
+  row('GET /api/media', instructors, at('/api/media')),
+  row('POST /api/media', { ...noRole, 'instructor': 'yes', 'other instructor': 'yes' }, async (world, _owner, caller) => ({ path: '/api/media', body: { uploadId: await world.upload(caller, 'lesson-media'), title: 'Scribing' } })),
+  row('GET /api/media/{id}', signedIn, async world => ({ path: `/api/media/${await publishedFilm(world)}` })),
+  row('GET /api/media/{id}/file', signedIn, async world => ({ path: `/api/media/${await publishedFilm(world)}/file` })),
+  row('POST /api/media/{id}/tracks', instructors, async world => ({ path: `/api/media/${await publishedFilm(world)}/tracks`, body: { kind: 'captions', vtt: 'WEBVTT\n\n00:00.000 --> 00:01.000\nUpright\n' } })),
+  row('GET /api/media/{id}/tracks/{file}', signedIn, async world => ({ path: `/api/media/${await publishedFilm(world)}/tracks/captions.vtt` })),
+  row('POST /api/media/{id}/position', signedIn, async world => ({ path: `/api/media/${await publishedFilm(world)}/position`, body: { seconds: 1 } })),
   row('GET /api/instruments', signedIn, at('/api/instruments')),
   row('GET /api/castings', signedIn, at('/api/castings')),
   row('GET /api/benches', signedIn, at('/api/benches')),
