@@ -226,11 +226,11 @@ export function useLessonDraft(slug: string) {
 
 const same = (a: { title: string, document: LessonDocument }, b: { title: string, document: LessonDocument }) => a.title === b.title && canonical(a.document) === canonical(b.document)
 
-/** Two ways of writing the same document are the same: names in order, nothing where nothing is said. */
+/** Two ways of writing the same document are the same: names in order, nothing where nothing is said, and without the addresses the server gives headings. */
 function canonical(value: unknown): string {
   if (Array.isArray(value)) return `[${value.map(canonical).join()}]`
   if (!value || typeof value !== 'object') return JSON.stringify(value ?? null)
-  return `{${Object.entries(value).filter(([, one]) => one !== undefined && one !== null).sort(([a], [b]) => (a < b ? -1 : 1)).map(([name, one]) => `${JSON.stringify(name)}:${canonical(one)}`).join()}}`
+  return `{${Object.entries(value).filter(([name, one]) => one !== undefined && one !== null && name !== 'id').sort(([a], [b]) => (a < b ? -1 : 1)).map(([name, one]) => `${JSON.stringify(name)}:${canonical(one)}`).join()}}`
 }
 
 function theirsOf(failure: Failure): DraftView | null {

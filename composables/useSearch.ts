@@ -1,6 +1,6 @@
 import { computed, onBeforeUnmount, ref, shallowRef, watch } from 'vue'
 import type { Failure } from '#shared/contract/failure'
-import type { SearchHit } from '#shared/contract/lessons'
+import type { SearchAnswer, SearchHit } from '#shared/contract/lessons'
 import { useApi } from './useApi'
 
 const pauseMs = 250
@@ -14,6 +14,8 @@ export function useSearch() {
   const hits = shallowRef<SearchHit[]>([])
   /** What the hits shown were found for; null before any search. */
   const foundFor = ref<string | null>(null)
+  /** Nothing stood there as it was typed: these are words near it. */
+  const spelling = ref(false)
   const busy = ref(false)
   const failure = ref<Failure | null>(null)
   let timer: ReturnType<typeof setTimeout> | undefined
@@ -32,13 +34,14 @@ export function useSearch() {
       return
     }
     busy.value = true
-    const answer = await api.get<{ items: SearchHit[] } | SearchHit[]>(`/api/search?q=${encodeURIComponent(words)}`)
+    const answer = await api.get<SearchAnswer>(`/api/search?q=${encodeURIComponent(words)}`)
     // A later search has overtaken this one.
     if (mine !== turn) return
     busy.value = false
     failure.value = answer.ok ? null : answer.failure
     if (!answer.ok) return
-    hits.value = Array.isArray(answer.value) ? answer.value : answer.value.items
+    hits.value = answer.value.items
+    spelling.value = answer.value.spelling
     foundFor.value = words
   }
 
@@ -49,5 +52,5 @@ export function useSearch() {
   if (import.meta.client && q.value) void search()
   onBeforeUnmount(() => clearTimeout(timer))
   const searching = computed(() => q.value.trim().length >= 2)
-  return { q, hits, foundFor, busy, failure, searching, search }
+  return { q, hits, foundFor, spelling, busy, failure, searching, search }
 }

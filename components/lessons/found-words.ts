@@ -28,3 +28,12 @@ export function byLesson(hits: readonly SearchHit[]): { lesson: SearchHit['lesso
   }
   return [...groups.values()]
 }
+
+/** Seconds of "1:15", "0:04.5", "1:00:00" or "75"; undefined where it is no time. */
+export function readClockTime(text: string): number | undefined {
+  const parts = /^(?:(?:(\d{1,2}):)?([0-5]?\d):)?(\d{1,5}(?:[.,]\d{1,3})?)$/.exec(text.trim())
+  if (!parts) return undefined
+  const seconds = Number((parts[3] ?? '').replace(',', '.'))
+  if (parts[2] !== undefined && seconds >= 60) return undefined
+  return Number(parts[1] ?? 0) * 3600 + Number(parts[2] ?? 0) * 60 + seconds
+}
