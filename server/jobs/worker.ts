@@ -14,6 +14,9 @@ export async function startWorker(app: App): Promise<void> {
     app.signals.onWork(name, () => app.boss.notifyWorker(worker))
   }
   await app.boss.schedule('seal-audit', '* * * * *', { reason: 'minute' })
+  await app.boss.schedule('pass-offers', '* * * * *', { cohortId: null })
+  await app.boss.schedule('send-reminders', '7 * * * *', {})
+  await app.boss.schedule('sweep-payments', '*/3 * * * *', {})
   await app.boss.schedule('clear-uploads', '17 3 * * *', {})
   // Not awaited: new work need not stand behind it.
   void resumeScoring(app).catch(fault => console.error('jobs: taking scoring up again:', fault))

@@ -6,8 +6,11 @@ export const queues = {
   'score-submission': { policy: 'standard', retryLimit: 8, retryDelay: 1, retryBackoff: true, expireInSeconds: 8 },
   'prepare-photo': { policy: 'standard', retryLimit: 6, retryDelay: 2, retryBackoff: true, expireInSeconds: 120 },
   'hash-media': { policy: 'standard', retryLimit: 6, retryDelay: 10, retryBackoff: true, expireInSeconds: 1800 },
+  'apply-payment': { policy: 'standard', retryLimit: 12, retryDelay: 2, retryBackoff: true, expireInSeconds: 180 },
+  'sweep-payments': { policy: 'short', retryLimit: 3, retryDelay: 20, retryBackoff: true, expireInSeconds: 600 },
   'send-refund': { policy: 'standard', retryLimit: 20, retryDelay: 5, retryBackoff: true, expireInSeconds: 120 },
   'make-receipt': { policy: 'standard', retryLimit: 12, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
+  'pass-offers': { policy: 'standard', retryLimit: 5, retryDelay: 5, retryBackoff: true, expireInSeconds: 120 },
   'send-mail': { policy: 'standard', retryLimit: 12, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'seal-audit': { policy: 'short', retryLimit: 3, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'send-reminders': { policy: 'short', retryLimit: 5, retryDelay: 60, retryBackoff: true, expireInSeconds: 600 },
@@ -21,8 +24,12 @@ export interface JobData {
   'score-submission': { submissionId: string }
   'prepare-photo': { photoId: string }
   'hash-media': { mediaId: string }
+  'apply-payment': { paymentId: string }
+  'sweep-payments': Record<string, never>
   'send-refund': { refundId: string }
   'make-receipt': { receiptId: string }
+  /** Null: every cohort. */
+  'pass-offers': { cohortId: string | null }
   'send-mail': { mailId: string }
   'seal-audit': { reason: string }
   'send-reminders': Record<string, never>

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import type { Money } from './money'
+import { receiptParams, type Money } from './money'
 import { cleanText, someText } from './text'
 
 /**
@@ -13,6 +13,7 @@ import { cleanText, someText } from './text'
 
 export const cohortParams = z.object({ code: z.string().regex(/^[A-Z0-9-]{3,20}$/) })
 export const linkParams = z.object({ token: z.string().min(20).max(200) })
+export const receiptLinkParams = linkParams.merge(receiptParams)
 const email = z.string().trim().toLowerCase().email('an e-mail address').max(254)
 /** A day of the calendar that there is: not the 31st of February. */
 export const date = z.string().regex(/^\d{4}-\d{2}-\d{2}$/, 'is not a date').refine((text) => {
@@ -56,6 +57,8 @@ export interface PlaceLinkView {
   refundToday: { wording: string, sum: string, back: Money } | null
   hasAccount: boolean
 }
+/** A place as its signed-in person sees it; `link` opens its own page. */
+export interface OwnPlaceView extends PlaceLinkView { link: string }
 export const payInput = z.object({ purpose: z.enum(['deposit', 'balance', 'renewal']) }).strict()
 export interface PayAnswer { url: string }
 
@@ -81,20 +84,28 @@ export interface PlaceView extends PlaceRow {
 export const placeSteps = ['offer', 'withdraw-offer', 'here', 'finish', 'stop'] as const
 export type PlaceStep = (typeof placeSteps)[number]
 export const placeStepInput = z.object({ step: z.enum(placeSteps), note: cleanText(500).default('') }).strict()
+export type PlaceStepInput = z.infer<typeof placeStepInput>
 export const cancelCauses = ['student', 'school', 'illness', 'unsafe-work'] as const
 export type CancelCause = (typeof cancelCauses)[number]
 export const refundQuery = z.object({ cause: z.enum(cancelCauses).default('student'), on: date.optional() })
 /** `seenMinor` is the sum that was shown: another sum by now is refused, nothing happens unseen. */
 export const cancelInput = z.object({ cause: z.enum(cancelCauses), seenMinor: z.number().int().min(0), note: cleanText(500).default('') }).strict()
+export type CancelInput = z.infer<typeof cancelInput>
 export const moveInput = z.object({ to: z.string().regex(/^[A-Z0-9-]{3,20}$/), cause: z.enum(cancelCauses).default('student'), note: cleanText(500).default('') }).strict()
+export type MoveInput = z.infer<typeof moveInput>
+export interface SponsorView { id: string, organisation: string, contact: string, email: string }
 export const orderInput = z.object({ organisation: someText(160), contact: someText(120), email, number: someText(60), amountMinor: z.number().int().min(1).max(10_000_000) }).strict()
+export type OrderInput = z.infer<typeof orderInput>
 export const bankInput = z.object({ purpose: z.enum(['deposit', 'balance']), amountMinor: z.number().int().min(1).max(10_000_000), reference: someText(120), on: date }).strict()
+export type BankInput = z.infer<typeof bankInput>
 export const handRefundInput = z.object({ amountMinor: z.number().int().min(1).max(10_000_000), reason: someText(500) }).strict()
 
-export const placesQuery = z.object({ search: cleanText(100).optional(), cohort: z.string().max(20).optional(), state: z.string().max(20).optional(), sort: z.enum(['name', 'asked', 'slot']).default('asked'), after: z.string().max(400).optional(), limit: z.coerce.number().int().min(1).max(100).default(25) })
+export const placesQuery = z.object({ search: cleanText(100).optional(), cohort: cleanText(20).optional(), state: cleanText(20).optional(), sort: z.enum(['name', 'asked', 'slot']).default('asked'), after: z.string().max(400).optional(), limit: z.coerce.number().int().min(1).max(100).default(25) })
+export type PlacesQuery = z.infer<typeof placesQuery>
 
 export const rosterInput = z.object({ csv: cleanText(500_000) }).strict()
 /** Every row of a list as it would be taken: nothing is kept by a preview. */
 export interface RosterPreview { rows: { line: number, name: string, email: string, sponsor: string, problems: string[] }[], good: number, bad: number, free: number, seen: string }
 export const rosterTakeInput = rosterInput.extend({ seen: z.string().length(64) }).strict()
+export type RosterTakeInput = z.infer<typeof rosterTakeInput>
 export interface CohortListView { cohort: CohortRow, people: { slot: number | null, name: string, email: string, state: PlaceState, head: string | null, consent: boolean, clearances: string[] }[], waiting: { turn: number, name: string, askedAt: string | null }[] }

@@ -1,0 +1,10 @@
+import type { EntityManager } from '@mikro-orm/postgresql'
+import { BenchPlace } from '#server/db/entities/BenchPlace'
+import { Refusal } from '#server/utils/refusal'
+
+/** A place with its cohort, person and course. The office sees all. @throws {Refusal} place_not_found */
+export async function findPlace(em: EntityManager, id: string): Promise<BenchPlace> {
+  const place = await em.findOne(BenchPlace, { id }, { populate: ['cohort', 'cohort.course', 'person'] })
+  if (!place) throw new Refusal('place_not_found')
+  return place
+}
