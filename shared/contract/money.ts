@@ -5,6 +5,9 @@ import { cleanText, someText } from './text'
 /** An amount in minor units: 35000 GBP is 350.00 pounds. Never a fraction. */
 export interface Money { minor: number, currency: string }
 
+/** A further year of lessons for somebody who finished, pence (handbook 5.4). */
+export const renewalMinor = 4000
+
 /** "£350.00", "-£25.00". */
 export function moneyText({ minor, currency }: Money): string {
   return new Intl.NumberFormat('en-GB', { style: 'currency', currency }).format(minor / 100)
@@ -46,3 +49,8 @@ export const receiptParams = z.object({ number: z.string().regex(/^S-\d{6,9}$/) 
 export interface DueRow { id: string, place: { id: string, name: string, email: string, cohort: string }, amount: Money, dueOn: string, daysLate: number, how: 'card or bank' | 'purchase order', order: string | null }
 /** What is owed to the school, and what it decided to give back that has not gone. */
 export interface OpenMoneyView { due: DueRow[], refunds: RefundView[] }
+
+/** POST /api/payments/returned: said by the page one comes back to from paying, before it looks again. */
+export const returnedInput = z.object({ token: z.string().min(20).max(200) }).strict()
+/** `underWay`: a payment is still open, so the page asks again in a moment. */
+export interface ReturnedAnswer { underWay: boolean }

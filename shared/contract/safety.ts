@@ -30,6 +30,8 @@ export interface ConsentView {
   /** One's own; besides only the safety officer reads them. */
   firstAid: string
   bootSize: string
+  /** What one may use, a tool each. */
+  clearances: ClearanceOne[]
 }
 
 const firstAid = cleanText(2000)

@@ -1,5 +1,6 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { Clearance } from '#server/db/entities/Clearance'
+import { Consent, ConsentText } from '#server/db/entities/Consent'
 import { HeadStop, PointRelease, WitnessCall } from '#server/db/entities/PointRelease'
 import { PracticeHead } from '#server/db/entities/PracticeHead'
 import { Instrument } from '#server/db/entities/Instrument'
@@ -17,12 +18,22 @@ import type { TestSchool } from './review/school'
 
 const day = 24 * 3_600_000
 
-/** Clears somebody for every tool of the school, from a month ago until `days` from now. */
+/** Clears somebody for every tool of the school, from a month ago until `days` from now, with the safety form signed. */
 export async function clearFor(school: TestSchool, who: Actor, { days = 60, tools = ['hot-tank', 'pressure-rig', 'flow-bench', 'die-grinder', 'right-angle-grinder'] } = {}): Promise<void> {
+  await sign(school, who)
   await school.em().transactional(async (tx) => {
     for (const tool of tools) {
       tx.persist(tx.create(Clearance, { person: tx.getReference(User, who.id), tool, from: new Date(school.now().getTime() - 30 * day), until: new Date(school.now().getTime() + days * day), givenBy: tx.getReference(User, school.ingrid.id), withdrawnAt: null }))
     }
+  })
+}
+
+/** Signs the newest safety form for somebody, if it is not signed. */
+export async function sign(school: Pick<TestSchool, 'em' | 'now'>, who: Pick<Actor, 'id' | 'name'>): Promise<void> {
+  await school.em().transactional(async (tx) => {
+    const [text] = await tx.find(ConsentText, {}, { orderBy: { version: 'desc' }, limit: 1 })
+    if (!text || await tx.count(Consent, { person: who.id, text }) > 0) return
+    tx.persist(tx.create(Consent, { person: tx.getReference(User, who.id), text, ticks: text.clauses.map(one => one.code), signedAs: who.name, guardian: null, at: new Date(school.now().getTime() - 30 * day) }))
   })
 }
 

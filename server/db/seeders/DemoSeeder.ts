@@ -1,4 +1,4 @@
-import type { EntityManager } from '@mikro-orm/core'
+import { ref, type EntityManager } from '@mikro-orm/core'
 import { Seeder } from '@mikro-orm/seeder'
 import type { CastingCard } from '../../../shared/domain/geometry/casting'
 import type { RubricPoint } from '../../../shared/domain/rubric/criterion'
@@ -8,14 +8,15 @@ import { Clearance } from '../entities/Clearance'
 import { Cohort } from '../entities/Cohort'
 import { CohortStaff } from '../entities/CohortStaff'
 import { Instrument } from '../entities/Instrument'
-import { Lesson } from '../entities/Lesson'
-import { LessonVersion } from '../entities/LessonVersion'
+import { MediaAsset } from '../entities/MediaAsset'
 import { PracticeHead } from '../entities/PracticeHead'
 import { RubricVersion } from '../entities/RubricVersion'
 import { ScaleCard } from '../entities/ScaleCard'
 import { SchoolSetting } from '../entities/SchoolSetting'
 import { User, type Role } from '../entities/User'
 import { readContent, type SchoolContent } from './content'
+import { makeConsents } from './demo-consents'
+import { makeLessons } from './demo-lessons'
 
 /** What the seeder is told: the school's instant, and the hash of the one password everybody has. */
 export interface DemoStart { until: Date, passwordHash: string, seededAt: Date }
@@ -37,9 +38,13 @@ export class DemoSeeder extends Seeder<Partial<DemoStart>> {
     const { rubric } = content
     const people = makePeople(em, content, passwordHash, until)
     const cohorts = makeCohorts(em, content)
+    const clips = await em.find(MediaAsset, { name: { $ne: null } })
+    const course = makeLessons(em, content, new Map(clips.map(one => [one.name ?? '', one.id])), instant('2025-09-01'))
+    for (const cohort of cohorts.values()) cohort.course = ref(course)
     makePlaces(em, content, people, cohorts, until)
     makeStaff(em, content, people, cohorts)
     makeClearances(em, content, people, until)
+    makeConsents(em, content, people, until)
 
     const began = instant('2025-09-01')
     const castings = content.castings.map(({ code, name, ...card }) => em.create(Casting, { code, name, version: 1, card: { code, name, ...card } as CastingCard, createdAt: began }))
@@ -47,10 +52,6 @@ export class DemoSeeder extends Seeder<Partial<DemoStart>> {
     makeHeads(em, content, people, cohorts, castings, first, until)
     for (const one of content.instruments) em.create(Instrument, { ...one, dueOn: '2026-09-01', createdAt: began })
     for (const one of content.start.scaleCards) em.create(ScaleCard, { ...one, createdAt: began })
-    for (const { markdown, ...one } of content.lessons) {
-      const lesson = em.create(Lesson, { ...one, createdAt: began })
-      em.create(LessonVersion, { lesson, version: 1, markdown, publishedAt: began })
-    }
     em.create(SchoolSetting, { name: 'school', value: content.scenario.school })
     em.create(SchoolSetting, { name: 'demo-clock', value: { demoNow: until.toISOString(), seededAt: seededAt.toISOString() } })
     await em.flush()

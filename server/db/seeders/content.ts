@@ -25,11 +25,14 @@ const startShape = z.object({
   students: z.record(z.object({ slot: z.number().int().optional(), firstCylinder: z.number().int(), second: z.object({ number: z.string(), firstCylinder: z.number().int(), receivedAt: z.string() }).optional() })),
   moved: z.record(z.object({ at: z.string(), slot: z.number().int() })),
   clearances: z.array(z.string()),
+  safety: z.record(z.object({ shares: z.array(z.string()).default([]), firstAid: z.string().default(''), bootSize: z.string().default('') })),
   scaleCards: z.array(z.object({ number: z.string(), barXMm: z.number(), barYMm: z.number(), thicknessMm: z.number() })),
 })
 
+const consentShape = z.object({ clauses: z.array(z.object({ code: z.string(), title: z.string(), text: z.string(), safety: z.boolean() })), choices: z.array(z.object({ code: z.string(), text: z.string() })) })
 const instrumentsShape = z.array(z.object({ code: z.string(), name: z.string(), quantities: z.array(z.string()), expandedU: z.number(), relative: z.boolean().default(false), unit: z.string() }))
-const lessonShape = z.object({ number: z.number().int(), slug: z.string(), title: z.string(), module: z.string(), ops: z.array(z.number().int()) })
+const courseShape = z.object({ code: z.string(), title: z.string(), summary: z.string(), modules: z.array(z.object({ number: z.number().int(), title: z.string(), outcome: z.string(), gates: z.array(z.string()) })) })
+const lessonShape = z.object({ number: z.number().int(), slug: z.string(), title: z.string(), module: z.number().int(), ops: z.array(z.number().int()) }).strict()
 
 export type SchoolContent = ReturnType<typeof readContent>
 
@@ -44,10 +47,12 @@ export function readContent() {
     start: startShape.parse(json('start.json')),
     rubric: json('rubric.json') as Rubric,
     castings: json('castings.json') as (CastingCard & { code: string, name: string })[],
+    consent: consentShape.parse(json('consent.json')),
     instruments: instrumentsShape.parse(json('instruments.json')),
+    course: courseShape.parse(json('course.json')),
     lessons: readdirSync(new URL('lessons/', folder)).filter(name => /^\d\d-.*\.md$/.test(name)).sort().map((name) => {
       const { data, content } = matter(readFileSync(new URL(`lessons/${name}`, folder), 'utf8'))
-      return { ...lessonShape.parse(data), markdown: content.trim() }
+      return { ...lessonShape.parse(data), file: name, markdown: content.trim() }
     }),
   }
 }

@@ -17,11 +17,7 @@ export async function listCurves(em: EntityManager, app: App, actor: Actor, head
 
 /** A head's flow runs a port at a time: the run that counts at each stage, baseline first, and the change of the last against the baseline. */
 export async function curveSets(em: EntityManager, head: Loaded<PracticeHead, 'casting' | 'rubric'>): Promise<CurveSetView[]> {
-  const sheets = (await newestReadings(em, head.id)).filter(one => one.kind === 'flow')
-  const evidence: EvidenceSet = {
-    casting: head.casting.$.card, op: 0, part: 'rest', ports: [], readings: [], photos: [], documents: [], judged: [], acidCleaned: null, handAllowanceMm: 0,
-    sheets: sheets.map(one => ({ id: one.sheet.id, op: one.sheet.$.submission.$.op, header: one.header, runs: one.runs, takenAt: one.sheet.$.addedAt.getTime() })),
-  }
+  const evidence = await flowEvidence(em, head)
   const ops = [...new Set(evidence.sheets.map(sheet => sheet.op))].sort((a, b) => a - b)
   const ports = new Map<string, { cylinder: number | null, side: Side }>()
   for (const run of evidence.sheets.flatMap(sheet => sheet.runs)) if (run.side !== null && run.points.length > 0) ports.set(`${run.cylinder ?? ''}|${run.side}`, { cylinder: run.cylinder, side: run.side })
@@ -48,4 +44,13 @@ export async function curveSets(em: EntityManager, head: Loaded<PracticeHead, 'c
         : null,
     }
   })
+}
+
+/** A head's flow sheets as evidence, each by its newest reading, and nothing else. */
+export async function flowEvidence(em: EntityManager, head: Loaded<PracticeHead, 'casting'>): Promise<EvidenceSet> {
+  const sheets = (await newestReadings(em, head.id)).filter(one => one.kind === 'flow')
+  return {
+    casting: head.casting.$.card, op: 0, part: 'rest', ports: [], readings: [], photos: [], documents: [], judged: [], acidCleaned: null, handAllowanceMm: 0,
+    sheets: sheets.map(one => ({ id: one.sheet.id, op: one.sheet.$.submission.$.op, header: one.header, runs: one.runs, takenAt: one.sheet.$.addedAt.getTime() })),
+  }
 }

@@ -2,6 +2,7 @@ import type { EntityManager } from '@mikro-orm/postgresql'
 import { Clearance } from '#server/db/entities/Clearance'
 import { HeadStop, PointRelease, WitnessCall } from '#server/db/entities/PointRelease'
 import { Submission } from '#server/db/entities/Submission'
+import { consentStates } from '#server/services/safety/consent-states'
 import type { App } from '#server/utils/app'
 import { routeState, type RouteStage } from '#shared/domain/rubric/route-state'
 import type { FoundHead } from './find-head'
@@ -30,7 +31,9 @@ export async function loadRoutes(em: EntityManager, app: Pick<App, 'clock'>, hea
   const releases = await em.find(PointRelease, ofHeads, { orderBy: { at: 'asc' } })
   const calls = await em.find(WitnessCall, ofHeads)
   const stops = await em.find(HeadStop, { ...ofHeads, liftedAt: null }, { orderBy: { at: 'asc' } })
-  const clearances = await em.find(Clearance, { person: { $in: [...new Set(heads.map(head => head.student.id))] }, withdrawnAt: null })
+  const students = [...new Set(heads.map(head => head.student.id))]
+  const clearances = await em.find(Clearance, { person: { $in: students }, withdrawnAt: null })
+  const consents = await consentStates(em, students)
   const submissions = await em.find(Submission, ofHeads)
   const now = app.clock.schoolNow().getTime()
 
@@ -47,6 +50,7 @@ export async function loadRoutes(em: EntityManager, app: Pick<App, 'clock'>, hea
       calls: own(calls).map(one => ({ point: one.point, toldAt: one.toldAt.getTime(), waitUntil: one.waitUntil.getTime(), seenAt: one.seenAt?.getTime() ?? null, seenBy: one.seenBy?.id ?? null })),
       stops: own(stops).map(one => ({ where: one.where, reason: one.reason })),
       clearances: clearances.filter(one => one.person.id === head.student.id).map(one => ({ tool: one.tool, from: one.from.getTime(), until: one.until.getTime() })),
+      consent: consents.get(head.student.id) ?? 'none',
       submissions: own(submissions).map(one => ({
         id: one.id, op: one.op, part: one.part, try: one.tryNumber, state: one.state, decision: one.decision ?? null,
         askedAt: one.askedAt?.getTime() ?? null, decidedAt: one.decidedAt?.getTime() ?? null,

@@ -2,6 +2,7 @@ import { readFileSync } from 'node:fs'
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { Casting } from '#server/db/entities/Casting'
 import { Cohort } from '#server/db/entities/Cohort'
+import { ConsentText, type ConsentChoice, type ConsentClause } from '#server/db/entities/Consent'
 import { CohortStaff } from '#server/db/entities/CohortStaff'
 import { CriterionResult } from '#server/db/entities/CriterionResult'
 import { Photo } from '#server/db/entities/Photo'
@@ -26,6 +27,7 @@ import type { Harness } from '../harness'
 const content = <Value>(name: string): Value => JSON.parse(readFileSync(new URL(`../../../content/school/${name}`, import.meta.url), 'utf8')) as Value
 export const schoolRubric = content<Rubric>('rubric.json')
 const rubric = schoolRubric
+export const schoolConsent = content<{ clauses: ConsentClause[], choices: ConsentChoice[] }>('consent.json')
 const castings = content<CastingCard[]>('castings.json')
 
 /** Change of one made result: without cylinder or side, of every result of that criterion. */
@@ -86,8 +88,9 @@ export async function makeSchool(harness: Pick<Harness, 'app'>): Promise<TestSch
     const other = tx.create(Cohort, { code: 'CIN-26', name: 'Cinder', startsOn: '2026-09-21', endsOn: '2026-12-18', pattern: 'weeks', places: 8, createdAt: began })
     const staff = (who: Actor, of: Cohort, posts: string[], points: string[]) => tx.create(CohortStaff, { cohort: of, person: tx.getReference(User, who.id), points, posts, from: began, until: null, givenBy: null })
     const head = tx.create(PracticeHead, { number: 'DNK-0147', student: tx.getReference(User, imre.id), cohort, casting, rubric: version, state: 'working', acidCleaned: false, receivedAt: began })
+    const consent = tx.create(ConsentText, { version: 1, clauses: schoolConsent.clauses, choices: schoolConsent.choices, standsFrom: 1, savedBy: null, savedAt: began })
     tx.persist([
-      casting, version, cohort, other, head,
+      casting, version, cohort, other, head, consent,
       staff(hanne, cohort, ['lead'], ['hold-1', 'hold-4', 'hold-5', 'hold-6', 'hold-7', 'hold-8', 'witness-2']),
       staff(marit, cohort, ['air', 'second'], ['hold-2', 'hold-5', 'hold-8']),
       staff(silas, cohort, ['chamber'], ['hold-1', 'hold-3', 'witness-1', 'witness-3']),

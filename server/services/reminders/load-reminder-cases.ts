@@ -1,0 +1,41 @@
+import type { EntityManager, FilterQuery, Loaded } from '@mikro-orm/postgresql'
+import { BenchPlace } from '#server/db/entities/BenchPlace'
+import { ConsentText } from '#server/db/entities/Consent'
+import { PurchaseOrder } from '#server/db/entities/Sponsor'
+import { dueMinor, nothingPaid, placeMoney } from '#server/services/places/place-money'
+import { consentStates } from '#server/services/safety/consent-states'
+import { addDays, schoolDay } from '#shared/contract/school-day'
+import type { ReminderCase } from './reminders-due'
+
+/** A balance falls due so many days before the start (handbook 5.4). */
+const balanceDueDays = 28
+
+export interface LoadedReminderCase { place: Loaded<BenchPlace, 'cohort' | 'person'>, of: ReminderCase }
+
+/** The places a query finds, with all that their reminders follow from. */
+export async function loadReminderCases(em: EntityManager, where: FilterQuery<BenchPlace>): Promise<LoadedReminderCase[]> {
+  const places = await em.find(BenchPlace, where, { populate: ['cohort', 'person'], orderBy: { createdAt: 'asc', id: 'asc' } })
+  if (places.length === 0) return []
+  const ids = places.map(place => place.id)
+  const paid = await placeMoney(em, ids)
+  const orders = new Set((await em.find(PurchaseOrder, { place: { $in: ids } })).map(order => order.place.id))
+  const consents = await consentStates(em, places.flatMap(place => place.person ? [place.person.id] : []))
+  const [text] = await em.find(ConsentText, {}, { orderBy: { version: 'desc' }, limit: 1 })
+  return places.map((place) => {
+    const cohort = place.cohort.$
+    return {
+      place,
+      of: {
+        state: place.state,
+        bookedOn: schoolDay(place.depositPaidAt ?? place.confirmedAt ?? place.createdAt),
+        startsOn: cohort.startsOn,
+        balanceDueOn: addDays(cohort.startsOn, -balanceDueDays),
+        dueMinor: dueMinor(place.state, cohort, paid.get(place.id) ?? nothingPaid) ?? 0,
+        ordered: orders.has(place.id),
+        consent: (place.person && consents.get(place.person.id)) ?? 'none',
+        consentSince: text?.standsFrom ?? 0,
+        accessUntil: place.accessUntil ? schoolDay(place.accessUntil) : null,
+      },
+    }
+  })
+}
