@@ -1,5 +1,6 @@
 import { computed, onBeforeUnmount, onMounted, ref } from 'vue'
 import type { Failure } from '#shared/contract/failure'
+import type { ReturnedAnswer } from '#shared/contract/money'
 import type { PayAnswer, PlaceLinkView } from '#shared/contract/places'
 import { useApi } from './useApi'
 import { useRead } from './useRead'
@@ -48,10 +49,12 @@ export function usePlaceLink(token: string) {
   let timer: ReturnType<typeof setTimeout> | undefined
   let wait = firstWaitMs
   async function look() {
+    // Asks the school to look at the card service itself, in case its message is late or lost.
+    await api.post<ReturnedAnswer>('/api/payments/returned', { token })
     await refresh()
+    if (!following.value) return
     if (!unread.value && view.value && !view.value.payingSince) {
-      following.value = false
-      slow.value = false
+      stopFollowing()
       return
     }
     wait = Math.min(longestWaitMs, wait * 1.25)
@@ -61,7 +64,12 @@ export function usePlaceLink(token: string) {
   function followPayment() {
     following.value = true
     wait = firstWaitMs
-    timer = setTimeout(look, wait)
+    void look()
+  }
+  function stopFollowing() {
+    clearTimeout(timer)
+    following.value = false
+    slow.value = false
   }
   onBeforeUnmount(() => clearTimeout(timer))
 
@@ -84,5 +92,5 @@ export function usePlaceLink(token: string) {
   /** Milliseconds until the held place is let go; null when none is held. */
   const heldForMs = computed(() => view.value?.heldUntil ? new Date(view.value.heldUntil).getTime() - new Date(view.value.now).getTime() - passed.value : null)
 
-  return { view, unread, loading, refresh, refused, busy, open, pass, pay, following, slow, followPayment, heldForMs }
+  return { view, unread, loading, refresh, refused, busy, open, pass, pay, following, slow, followPayment, stopFollowing, heldForMs }
 }

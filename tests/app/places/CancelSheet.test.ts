@@ -30,6 +30,13 @@ describe('CancelSheet', () => {
     await dialog(wrapper, 0).get('form').trigger('submit')
     expect(wrapper.emitted('cancel')![0]![0]).toEqual({ cause: 'student', seenMinor: 242_500, note: '' })
   })
+  it('calls a stop a stop, and asks with its cause', async () => {
+    const wrapper = await sheet({ cause: 'unsafe-work', place: placeView({ state: 'here' }), quote: agnesQuote({ mayMove: false }) })
+    await press(wrapper, 'Stop this course')
+    expect(dialog(wrapper, 0).text()).toContain('after a written warning')
+    await dialog(wrapper, 0).get('form').trigger('submit')
+    expect(wrapper.emitted('cancel')![0]![0]).toMatchObject({ cause: 'unsafe-work', seenMinor: 0 })
+  })
   it('moves only to another cohort with room', async () => {
     const wrapper = await sheet()
     await press(wrapper, 'Move to another cohort')

@@ -152,12 +152,17 @@ describe('HandRefundDialog', () => {
 
 describe('StepButtons', () => {
   it('offers the steps the server names and no other, and asks before each', async () => {
-    const wrapper = await mountSuspended(StepButtons, { props: { place: placeView({ steps: ['here', 'stop'] }), busy: false, refused: null } })
-    expect(wrapper.findAll('button').map(one => one.text()).slice(0, 2)).toEqual(['Here', 'Stop the course'])
-    await wrapper.findAll('button')[1]!.trigger('click')
+    const wrapper = await mountSuspended(StepButtons, { props: { place: placeView({ steps: ['withdraw-offer'], state: 'offered' }), busy: false, refused: null } })
+    const buttons = wrapper.findAll('button').filter(one => !wrapper.get('dialog').element.contains(one.element))
+    expect(buttons.map(one => one.text())).toEqual(['Withdraw the offer'])
+    await buttons[0]!.trigger('click')
     expect(wrapper.emitted('step')).toBeUndefined()
-    expect(wrapper.get('dialog').text()).toContain('after a written warning')
+    expect(wrapper.get('dialog').text()).toContain('goes to the next person on the list')
     await wrapper.get('dialog form').trigger('submit')
-    expect(wrapper.emitted('step')![0]![0]).toEqual({ step: 'stop', note: '' })
+    expect(wrapper.emitted('step')![0]![0]).toEqual({ step: 'withdraw-offer', note: '' })
+  })
+  it('stops nobody without the rule and the sum beside it', async () => {
+    const wrapper = await mountSuspended(StepButtons, { props: { place: placeView({ steps: ['finish', 'stop'], state: 'here' }), busy: false, refused: null } })
+    expect(wrapper.findAll('button').some(one => one.text().startsWith('Stop'))).toBe(false)
   })
 })
