@@ -6,7 +6,7 @@ const names: Readonly<Record<string, string>> = {
   'place-held': 'Place held',
   'deposit-received': 'Deposit received',
   'balance-received': 'Balance received',
-  'safety-form': 'Safety form not done',
+  'safety-form-not-done': 'Safety form not done',
   'balance-due': 'Balance due',
   'balance-late': 'Balance late',
   'waiting-list-offer': 'Waiting list offer',

@@ -77,7 +77,9 @@ export const refusals = {
   witness_not_told: [409, 'Nobody was told of this point yet.'],
   page_unknown: [422, 'That is not the `next` of a page of this list.'],
   // rubric, lessons, compute
-  lesson_not_found: [404, 'There is no such lesson.'],
+  lesson_not_found: [404, 'There is no such lesson that you may read.'],
+  access_ended: [403, 'Your access to the lessons has ended. Your own record stays; a renewal opens them for a year.'],
+  lessons_not_open: [403, 'The lessons open when your place is booked.'],
   rubric_not_found: [404, 'There is no such version of the rubric.'],
   rubric_stale: [409, 'Somebody saved a version since you began. Look at it first.'],
   must_unreachable: [422, 'A must of this rubric has no value that could be accepted.'],
@@ -131,6 +133,10 @@ export const refusals = {
   email_taken: [409, 'There is an account with that e-mail already.'],
   session_not_found: [404, 'There is no such sign-in of yours.'],
   job_not_found: [404, 'There is no such job.'],
+  // mail
+  mail_not_found: [404, 'There is no such message.'],
+  mail_waiting: [409, 'This message is still on its way. Wait until it was sent or given up.'],
+  mail_link_once: [409, 'This message holds a link that works once. Ask for a new invitation or a new password instead.'],
   // safety
   consent_text_missing: [404, 'The school has no safety form yet. See the safety officer.'],
   consent_stale: [409, 'The safety form changed while you read it. Read the new one, then sign.'],

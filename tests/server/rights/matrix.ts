@@ -1,5 +1,6 @@
 import type { Actor } from '#server/utils/actor'
-import { schoolRubric } from '../review/school'
+import { addDays, schoolDay } from '#shared/contract/school-day'
+import { schoolConsent, schoolRubric } from '../review/school'
 import { publishedFilm } from './published-film'
 import type { World } from './world'
 
@@ -105,6 +106,21 @@ export const matrix: readonly MatrixRow[] = [
   row('POST /api/people/invitations', { ...noRole, admin: 'yes' }, async () => ({ path: '/api/people/invitations', body: { name: 'Wen Sallis', email: `${crypto.randomUUID()}@sallowbeck.example`, roles: ['student'] } })),
   row('GET /api/jobs/stuck', { ...noRole, admin: 'yes' }, at('/api/jobs/stuck')),
   row('POST /api/jobs/{id}/rerun', { ...noRole, admin: 404 }, at('/api/jobs/00000000-0000-4000-8000-000000000000/rerun', {})),
+
+  row('GET /api/mails', { ...noRole, admin: 'yes' }, at('/api/mails')),
+  row('POST /api/mails/{id}/resend', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/mails/${await world.mail()}/resend`, body: {} })),
+
+  // the safety form and clearances; a second signature of one version is refused, which is a yes to the person
+  row('GET /api/consent', signedIn, at('/api/consent')),
+  row('POST /api/consent', signedIn, at('/api/consent', { version: 1, ticks: schoolConsent.clauses.map(one => one.code), signedAs: 'Imre Tallowin', under18: false })),
+  row('POST /api/consent/choices', signedIn, at('/api/consent/choices', { code: 'cohort-photos', allowed: true })),
+  row('POST /api/consent/note', signedIn, at('/api/consent/note', { firstAid: '', bootSize: '9' })),
+  row('GET /api/consent/text', { ...noRole, admin: 'yes', safety: 'yes' }, at('/api/consent/text')),
+  row('POST /api/consent/text', { ...noRole, safety: 'yes' }, at('/api/consent/text', { after: 1, clauses: schoolConsent.clauses, choices: schoolConsent.choices })),
+  row('GET /api/clearances', { ...noRole, admin: 'yes', safety: 'yes' }, at('/api/clearances')),
+  row('GET /api/clearances/people/{id}', { ...noRole, admin: 'yes', safety: 'yes' }, async (_world, owner) => ({ path: `/api/clearances/people/${owner.id}` })),
+  row('POST /api/clearances', { ...noRole, safety: 'yes' }, async (world, owner) => ({ path: '/api/clearances', body: { person: owner.id, tool: 'die-grinder', until: addDays(schoolDay(world.school.now()), 30) } })),
+  row('POST /api/clearances/{id}/withdraw', { ...noRole, safety: 'yes' }, async (world, owner) => ({ path: `/api/clearances/${await world.clearance(owner)}/withdraw`, body: {} })),
 
   // what the school works by
   row('GET /api/lessons', signedIn, at('/api/lessons')),

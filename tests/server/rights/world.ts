@@ -1,9 +1,6 @@
 import { createHash, randomUUID } from 'node:crypto'
-import { BenchPlace } from '#server/db/entities/BenchPlace'
-import { Cohort } from '#server/db/entities/Cohort'
-import { Lesson } from '#server/db/entities/Lesson'
-import { LessonVersion } from '#server/db/entities/LessonVersion'
 import { HeadStop, WitnessCall } from '#server/db/entities/PointRelease'
+import { Mail } from '#server/db/entities/Mail'
 import { PracticeHead } from '#server/db/entities/PracticeHead'
 import { Submission } from '#server/db/entities/Submission'
 import { Photo } from '#server/db/entities/Photo'
@@ -14,6 +11,7 @@ import { addFlowSheet } from '#server/services/flow-sheets/add-flow-sheet'
 import type { Actor } from '#server/utils/actor'
 import type { SubmissionPart } from '#shared/domain/rubric/evidence'
 import type { Harness } from '../harness'
+import { makeCurriculum, words } from '../lessons/curriculum'
 import type { TestSchool } from '../review/school'
 import { clearFor, walkTo } from '../walk'
 
@@ -42,6 +40,10 @@ export interface World {
   stop: (owner: Actor, by: Actor) => Promise<string>
   /** Slug of a published lesson. */
   lesson: () => Promise<string>
+  /** A clearance for the saw, which no stage of a student asks for. */
+  clearance: (owner: Actor) => Promise<string>
+  /** A message that was sent. */
+  mail: () => Promise<string>
   /** Op 60 with Witness 1 told a moment ago. */
   told: (owner: Actor) => Promise<string>
 }
@@ -51,9 +53,10 @@ export async function makeWorld(harness: Harness, school: TestSchool): Promise<W
   const bettany = await school.person('Bettany Crake', ['student'])
   const freya = await school.person('Freya Dunmallet', ['student'])
   const stranger = await school.person('Tomek Oake', ['student'])
-  await school.em().transactional(async (tx) => {
-    tx.persist(tx.create(BenchPlace, { cohort: tx.getReference(Cohort, school.cohortId), person: tx.getReference(User, freya.id), state: 'finished', slot: null, createdAt: school.now(), finishedAt: school.now() }))
-  })
+  const curriculum = await makeCurriculum(school)
+  await curriculum.place(school.imre, 'here', 1)
+  await curriculum.place(bettany, 'here', 2)
+  await curriculum.place(freya, 'finished', null, { accessUntil: new Date(school.now().getTime() + 2 * 365 * 24 * 3_600_000) })
   for (const one of [school.imre, bettany, freya]) await clearFor(school, one)
   let count = 200
 
@@ -94,10 +97,7 @@ export async function makeWorld(harness: Harness, school: TestSchool): Promise<W
     async lesson() {
       count += 1
       const slug = `lesson-${count}`
-      await school.em().transactional(async (tx) => {
-        const lesson = tx.create(Lesson, { number: count, slug, title: 'Scribing', module: 'Lines', ops: [40], createdAt: school.now() })
-        tx.persist(tx.create(LessonVersion, { lesson, version: 1, markdown: '# Scribing', publishedAt: school.now() }))
-      })
+      await curriculum.lesson(count, slug, 'Scribing', [words('Scribe one line.')])
       return slug
     },
     head: owner => head(owner),
@@ -136,6 +136,20 @@ export async function makeWorld(harness: Harness, school: TestSchool): Promise<W
         const made = tx.create(HeadStop, { head: tx.getReference(PracticeHead, headId), by: tx.getReference(User, by.id), at: school.now(), criterion: null, where: 'bowl wall', reason: 'Look again.', liftedBy: null, liftedAt: null })
         tx.persist(made)
         return made.id
+      })
+    },
+    async clearance(owner) {
+      return school.em().transactional(async (tx) => {
+        const made = tx.create(Clearance, { person: tx.getReference(User, owner.id), tool: 'saw', from: school.now(), until: new Date(school.now().getTime() + 3_600_000), givenBy: tx.getReference(User, school.ingrid.id), withdrawnAt: null })
+        tx.persist(made)
+        return made.id
+      })
+    },
+    async mail() {
+      return school.em().transactional(async (tx) => {
+        const id = randomUUID()
+        tx.persist(tx.create(Mail, { id, key: `test:${id}`, template: 'welcome', person: null, to: 'imre@sallowbeck.example', subject: 'Tuesday: what to bring', html: '<p>Cotton clothes.</p>', text: 'Cotton clothes.', attachments: null, state: 'sent', messageId: `${id}@test`, providerId: null, problem: null, createdAt: new Date(), sentAt: new Date() }))
+        return id
       })
     },
     async told(owner) {
