@@ -1,3 +1,5 @@
+import { fileURLToPath } from 'node:url'
+
 export default defineNuxtConfig({
   modules: [
     '@nuxt/eslint',
@@ -49,6 +51,8 @@ export default defineNuxtConfig({
   compatibilityDate: '2026-01-01',
   nitro: {
     imports: false as never,
+    // Read as files, not imported: the letters of receipts.
+    externals: { traceInclude: ['DejaVuSans', 'DejaVuSans-Bold'].map(name => fileURLToPath(new URL(`node_modules/dejavu-fonts-ttf/ttf/${name}.ttf`, import.meta.url))) },
     esbuild: { options: { target: 'node20' } },
     compressPublicAssets: { gzip: true, brotli: true },
   },

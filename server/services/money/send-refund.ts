@@ -4,6 +4,7 @@ import { Refund } from '#server/db/entities/Refund'
 import type { App } from '#server/utils/app'
 import { enqueue } from '#server/utils/enqueue'
 import { recordEvent } from '#server/utils/record-event'
+import { refuseRefund } from './refuse-refund'
 
 /**
  * Asks the card processor for one decided refund. The key it is asked by comes from the row, so a try whose answer was lost is not a
@@ -30,8 +31,7 @@ export async function sendRefund(app: App, refundId: string): Promise<void> {
     const row = await tx.findOneOrFail(Refund, { id: refundId }, { lockMode: LockMode.PESSIMISTIC_WRITE })
     if (row.state !== 'decided' || row.tries !== refund.tries) return
     if (answer.state === 'refused' || answer.state === 'failed') {
-      Object.assign(row, { state: 'refused', problem: answer.problem ?? 'The card processor gave no reason.', providerId: 'id' in answer ? answer.id : null })
-      recordEvent(tx, { actor: 'job', action: 'refund-refused', subject: `place:${row.place.id}`, detail: { refund: row.id } })
+      await refuseRefund(tx, app, row, { problem: answer.problem, providerId: 'id' in answer ? answer.id : null })
       return
     }
     Object.assign(row, { state: 'sent', providerId: answer.id, problem: null })
