@@ -7,6 +7,7 @@ import { readContent } from '#server/db/seeders/content'
 import { sealAudit } from '#server/services/audit/seal-audit'
 import type { Config } from '#server/utils/config'
 import { hashPassword } from '#server/utils/passwords'
+import { seedClips } from './seed-clips'
 import { paperHeads } from './paper-heads'
 import { playPaper } from './play-paper'
 import { storyPictures } from './pictures'
@@ -28,6 +29,8 @@ export async function seedSchool(given: { orm: MikroORM, config: Config, storage
   const em = orm.em.fork()
   if (await em.count(User) > 0) return await em.count(SchoolSetting, { name: 'demo-clock' }) > 0 ? 'already seeded' : 'other people'
   const { password } = readContent().start
+  // Before the lessons, which show them.
+  await seedClips(orm.em.fork(), storage, new Date('2025-09-01T00:00:00Z'))
   await new DemoSeeder().run(em, { until, passwordHash: await hashPassword(password), seededAt: new Date() })
   const opened = await openStoryApp(config, { orm, storage })
   const player = { story: opened, pictures: storyPictures(opened.app), actors: await loadActors(orm.em.fork()) }
