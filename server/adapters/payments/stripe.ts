@@ -102,7 +102,7 @@ export function stripePayments(settings: PaySettings, wait: (ms: number) => Prom
       return {
         sessionId: session.id,
         reference: session.client_reference_id,
-        status: session.status ?? 'open',
+        status: session.status === 'complete' || session.status === 'expired' ? session.status : 'open',
         paid: session.payment_status === 'paid',
         url: session.url,
         expiresAt: toDate(session.expires_at),
