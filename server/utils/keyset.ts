@@ -4,7 +4,12 @@ import { readPageToken, writePageToken } from './page-token'
 /** What a list may be ordered by: an SQL expression that is never null, its direction, and the type its key is compared as. */
 export interface KeysetOrder { by: string, direction: 'asc' | 'desc', type: 'text' | 'timestamptz' | 'bigint' }
 
-const key = z.tuple([z.union([z.string(), z.number()]), z.string().uuid()])
+/** A key as the list would have written it: anything else PostgreSQL would refuse, or worse, read otherwise. */
+const keyOf = {
+  text: z.string().refine(text => text.isWellFormed() && !text.includes('\0')),
+  timestamptz: z.string().datetime({ precision: 6 }),
+  bigint: z.union([z.number().int(), z.string().regex(/^-?\d{1,18}$/)]),
+} satisfies Record<KeysetOrder['type'], z.ZodTypeAny>
 
 /**
  * One page of a list by keyset: the condition that begins after the last row seen, the order, and how the next page is named.
@@ -14,7 +19,7 @@ const key = z.tuple([z.union([z.string(), z.number()]), z.string().uuid()])
  * @throws {Refusal} page_unknown when `after` is not a page of a list
  */
 export function keyset(order: KeysetOrder, idColumn: string, after: string | undefined) {
-  const before = after === undefined ? null : readPageToken(after, key)
+  const before = after === undefined ? null : readPageToken(after, z.tuple([keyOf[order.type], z.string().uuid()]))
   const sign = order.direction === 'asc' ? '>' : '<'
   const exact = order.type === 'timestamptz' ? `to_char(${order.by} at time zone 'utc', 'YYYY-MM-DD"T"HH24:MI:SS.US"Z"')` : order.by
   return {

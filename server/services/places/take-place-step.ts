@@ -1,5 +1,6 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import type { BenchPlace } from '#server/db/entities/BenchPlace'
+import { writeResults } from '#server/services/reminders/write-results'
 import type { Actor } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
 import { Refusal } from '#server/utils/refusal'
@@ -50,4 +51,5 @@ async function finish(tx: EntityManager, app: App, actor: Actor, place: BenchPla
   Object.assign(place, { state: 'finished', slot: null, finishedAt: now, accessUntil: until })
   notePlace(tx, place, actor, 'place-finished', { accessUntil: until.toISOString() })
   await tx.flush()
+  await writeResults(tx, app, place)
 }

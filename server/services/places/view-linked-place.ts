@@ -1,5 +1,4 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
-import type { BenchPlace } from '#server/db/entities/BenchPlace'
 import { Payment } from '#server/db/entities/Payment'
 import { PurchaseOrder } from '#server/db/entities/Sponsor'
 import { quoteRefund } from '#server/services/money/quote-refund'
@@ -7,7 +6,7 @@ import { receiptNumber } from '#shared/contract/receipt-number'
 import type { App } from '#server/utils/app'
 import type { PlaceLinkView } from '#shared/contract/places'
 import { countPlaces } from './count-places'
-import { findLinkedPlace } from './find-linked-place'
+import { findLinkedPlace, type LinkedPlace } from './find-linked-place'
 import { turnOf } from './list-turn'
 import { dueMinor, nothingPaid, placeMoney } from './place-money'
 import { placeToken } from './place-link'
@@ -22,7 +21,7 @@ export async function viewLinkedPlace(em: EntityManager, app: App, token: string
 }
 
 /** A place as its own person sees it. Its cohort and course are loaded. */
-export async function toLinkView(em: EntityManager, app: App, place: BenchPlace): Promise<PlaceLinkView> {
+export async function toLinkView(em: EntityManager, app: App, place: LinkedPlace): Promise<PlaceLinkView> {
   const cohort = place.cohort.$
   const now = app.clock.schoolNow()
   const amount = (minor: number) => ({ minor, currency: cohort.currency })
@@ -52,7 +51,7 @@ export async function toLinkView(em: EntityManager, app: App, place: BenchPlace)
   }
 }
 
-function whatNext({ state }: BenchPlace, due: number | null): PlaceLinkView['doing'] {
+function whatNext({ state }: LinkedPlace, due: number | null): PlaceLinkView['doing'] {
   if (state === 'asked') return 'open'
   if (state === 'waiting-list') return 'wait'
   if (state === 'offered') return 'pay-deposit'

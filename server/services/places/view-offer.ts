@@ -11,7 +11,7 @@ import { countPlaces, type PlaceCount } from './count-places'
 
 /** A cohort as a stranger sees it. The course is loaded. */
 export function toOffer(app: Pick<App, 'clock'>, cohort: Cohort, { taken, waiting }: PlaceCount = { taken: 0, waiting: 0 }): CohortOffer {
-  const course = cohort.course?.isInitialized() ? cohort.course.$ : null
+  const course = cohort.course?.isInitialized() ? cohort.course.unwrap() : null
   const amount = (minor: number) => ({ minor, currency: cohort.currency })
   return {
     code: cohort.code, name: cohort.name, course: { code: course?.code ?? '', title: course?.title ?? '', summary: course?.summary ?? '' },
