@@ -102,7 +102,7 @@ export function stripePayments(settings: PaySettings, wait: (ms: number) => Prom
       return {
         sessionId: session.id,
         reference: session.client_reference_id,
-        status: session.status === 'complete' || session.status === 'expired' ? session.status : 'open',
+        status: toStatus(session.status),
         paid: session.payment_status === 'paid',
         url: session.url,
         expiresAt: toDate(session.expires_at),
@@ -154,6 +154,9 @@ export function stripePayments(settings: PaySettings, wait: (ms: number) => Prom
 
 const toDate = (seconds: number) => new Date(seconds * 1000)
 const idOf = (value: string | { id: string } | null): string | null => typeof value === 'string' ? value : value?.id ?? null
+
+/** Typed as any text, since later versions of the API may know more. */
+const toStatus = (status: string | null): CheckoutState['status'] => status === 'complete' || status === 'expired' ? status : 'open'
 
 function toRefund(refund: Stripe.Refund): RefundState {
   const failed = refund.status === 'failed' || refund.status === 'canceled'
