@@ -11,6 +11,7 @@ import { Refusal } from '#server/utils/refusal'
 import type { PlaceAskAnswer, PlaceAskInput } from '#shared/contract/places'
 import { countAsk } from './ask-throttle'
 import { countPlaces } from './count-places'
+import { emptyPlace } from './empty-place'
 import { lockCohort } from './lock-place'
 import { notePlace } from './note-place'
 import { placeLink } from './place-link'
@@ -47,10 +48,7 @@ async function keepAsk(tx: EntityManager, app: App, cohort: Cohort, { name, emai
   // Later than the ask before, also within one millisecond: the audit record is put in order by its times.
   const at = new Date(Math.max(Date.now(), before ? before.createdAt.getTime() + 1 : 0))
   cohort.lastListNumber += 1
-  const place = tx.create(BenchPlace, {
-    cohort, person: null, name, email, note, state: 'asked', slot: null, listNumber: cohort.lastListNumber, askedAt: app.clock.schoolNow(), openedAt: null, offeredAt: null, heldUntil: null,
-    depositPaidAt: null, confirmedAt: null, movedFromId: null, endedAt: null, endedBecause: null, finishedAt: null, accessUntil: null, createdAt: at,
-  })
+  const place = tx.create(BenchPlace, { ...emptyPlace, cohort, name, email, note, state: 'asked', listNumber: cohort.lastListNumber, askedAt: app.clock.schoolNow(), createdAt: at })
   tx.persist(place)
   notePlace(tx, place, 'visitor', 'place-asked', { cohort: cohort.code, number: cohort.lastListNumber }, at)
   await tx.flush()
