@@ -69,12 +69,19 @@ export const consentTextInput = z.object({
     codes.forEach((one, at) => codes.indexOf(one) !== at && context.addIssue({ code: 'custom', path: [name, at, 'code'], message: 'is there twice' }))
   }
 })
+/** Whether two versions say the same about safety, in whatever order: if not, everybody is asked again. */
+export function sameSafetyClauses(one: readonly { code: string, title: string, text: string, safety: boolean }[], other: typeof one): boolean {
+  const safety = (clauses: typeof one) => JSON.stringify(clauses.filter(clause => clause.safety).map(({ code: name, title, text }) => [name, title, text]).sort())
+  return safety(one) === safety(other)
+}
 export type ConsentTextInput = z.infer<typeof consentTextInput>
 
 export interface ClearanceOne { id: string, tool: string, from: string, until: string, lapsed: boolean, givenBy: string }
 /** A person and what they may use today. `missing`: what the route asks for and they lack; of staff nothing is asked. */
 export interface ClearanceRow { id: string, name: string, cohort: string | null, staff: boolean, consent: ConsentState, clearances: ClearanceOne[], missing: string[] }
 export interface PersonSafetyView extends ClearanceRow {
+  /** The school's now, ISO: last days are counted from it. */
+  today: string
   /** Every clearance there ever was, newest first. */
   history: (ClearanceOne & { withdrawnAt: string | null })[]
   signed: { version: number, at: string, as: string, guardian: string | null }[]

@@ -58,3 +58,10 @@ export function dayInWords(day: string): string {
 export function weekdayOf(day: string): string {
   return weekday.format(new Date(utc(day)))
 }
+
+const shortWithYear = new Intl.DateTimeFormat('en-GB', { timeZone: 'UTC', day: 'numeric', month: 'short', year: '2-digit' })
+
+/** "21 Sept 26", for tables. */
+export function shortDay(day: string): string {
+  return shortWithYear.format(new Date(utc(day)))
+}

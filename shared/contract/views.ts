@@ -5,6 +5,7 @@ import type { CriterionState, Rubric, RubricStage } from '../domain/rubric/crite
 import type { CriterionResult, ReadingEvidence } from '../domain/rubric/evidence'
 import type { Side } from '../domain/units/port'
 import { cleanText } from './text'
+import type { ConsentState } from './safety'
 
 /** What the server answers and the pages draw. Times are ISO strings; lengths mm unless a name says otherwise. */
 
@@ -108,6 +109,8 @@ export interface FeedbackView {
 
 /** My bench: what a student needs before the next stroke. */
 export interface BenchView {
+  /** Whether the safety form is signed as it stands; without it every stage with a tool is shut. */
+  consent: ConsentState
   head: HeadView | null
   otherHeads: HeadSummary[]
   today: { date: string, week: number | null, weeks: number | null }

@@ -6,6 +6,7 @@ import { stageNow } from '#server/services/heads/head-summary'
 import { headSummaries } from '#server/services/heads/list-heads'
 import { loadRoute } from '#server/services/heads/route-state'
 import { toHeadView } from '#server/services/heads/view-head'
+import { consentState } from '#server/services/safety/consent-states'
 import { cautionLines, shortCaution } from '#server/services/school/stage-words'
 import { gatherForPart } from '#server/services/submissions/gather-evidence'
 import { wantedViews } from '#server/services/submissions/wanted-views'
@@ -26,7 +27,7 @@ export async function viewBench(em: EntityManager, app: App, actor: Actor): Prom
   const heads = await em.find(PracticeHead, { student: actor.id }, { populate: ['student', 'cohort', 'casting', 'rubric'], orderBy: { receivedAt: 'desc', number: 'desc' } }) as FoundHead[]
   const head = heads.find(one => one.state === 'received' || one.state === 'working')
   const otherHeads = await headSummaries(em, app, heads.filter(one => one !== head))
-  const nothing: BenchView = { head: null, otherHeads, today: { date: now.toISOString(), week: null, weeks: null }, caution: [shortCaution], next: null, metalLeft: [], noMoreCutting: [], waiting: [], wanted: [], fromInstructor: null }
+  const nothing: BenchView = { consent: await consentState(em, actor.id), head: null, otherHeads, today: { date: now.toISOString(), week: null, weeks: null }, caution: [shortCaution], next: null, metalLeft: [], noMoreCutting: [], waiting: [], wanted: [], fromInstructor: null }
   if (!head) return nothing
 
   const route = await loadRoute(em, app, head)

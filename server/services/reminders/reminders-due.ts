@@ -70,7 +70,7 @@ function balance(place: ReminderCase, today: string): Reminder[] {
   if (daysLate >= 1 && daysLate <= graceDays) return [{ kind: 'balance-late', on: due, daysLate, heldUntil: addDays(due, graceDays + 1) }]
   if (daysLate > 0) return []
   const on = newestOf(before.balance, due, today)
-  return on !== null && place.bookedOn < on ? [{ kind: 'balance-due', on, inDays: -daysLate }] : []
+  return on !== null && place.bookedOn < on ? [{ kind: 'balance-due', on, inDays: daysBetween(today, due) }] : []
 }
 
 /** Whoever booked late needs to know what to bring all the same. */

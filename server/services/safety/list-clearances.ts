@@ -21,7 +21,7 @@ const people = `(
   select u."id", u."name", u."roles" && '{instructor,safety}' as staff, place."name" as cohort,
     case when place."name" is null then '{}' else array(
       select distinct t.tool from "rubric_version" r, jsonb_array_elements(r."rubric"->'stages') s, jsonb_array_elements_text(s->'clearances') t(tool)
-      where r."version" = (select max("version") from "rubric_version")) end as needed,
+      where r."version" = (select max("version") from "rubric_version") order by 1) end as needed,
     array(select distinct c."tool"::text from "clearance" c where c."person_id" = u."id" and c."withdrawn_at" is null and c."from" <= ? and c."until" > ?) as held,
     coalesce((select min(one.until) from (select max(c."until") as until from "clearance" c where c."person_id" = u."id" and c."withdrawn_at" is null group by c."tool") one), '9999-12-31') as first_lapse,
     exists (select 1 from "consent" c join "consent_text" t on t."id" = c."text_id" where c."person_id" = u."id"

@@ -1,13 +1,13 @@
 import { UniqueConstraintViolationException } from '@mikro-orm/core'
 import type { EntityManager } from '@mikro-orm/postgresql'
-import { ConsentText, type ConsentClause } from '#server/db/entities/Consent'
+import { ConsentText } from '#server/db/entities/Consent'
 import { User } from '#server/db/entities/User'
 import type { Actor } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
 import { enqueue } from '#server/utils/enqueue'
 import { recordEvent } from '#server/utils/record-event'
 import { Refusal } from '#server/utils/refusal'
-import type { ConsentTextInput, ConsentTextView } from '#shared/contract/safety'
+import { sameSafetyClauses, type ConsentTextInput, type ConsentTextView } from '#shared/contract/safety'
 
 /**
  * Saves the next version of the safety form. Where a safety clause is new, gone or says something else, nobody's signature stands any
@@ -21,7 +21,7 @@ export async function saveConsentText(em: EntityManager, app: App, actor: Actor,
       const [before] = await tx.find(ConsentText, {}, { orderBy: { version: 'desc' }, limit: 1 })
       if ((before?.version ?? 0) !== input.after) throw new Refusal('consent_text_stale', undefined, { version: before?.version ?? 0 })
       const version = input.after + 1
-      const asksAgain = !before || !sameSafety(before.clauses, input.clauses)
+      const asksAgain = !before || !sameSafetyClauses(before.clauses, input.clauses)
       const text = tx.create(ConsentText, { version, clauses: input.clauses, choices: input.choices, standsFrom: asksAgain ? version : before.standsFrom, savedBy: tx.getReference(User, actor.id), savedAt: app.clock.schoolNow() })
       tx.persist(text)
       recordEvent(tx, { actor: actor.id, action: 'consent-text-saved', subject: `consent-text:${version}`, detail: { version, asksAgain } })
@@ -36,12 +36,6 @@ export async function saveConsentText(em: EntityManager, app: App, actor: Actor,
     if (thrown instanceof UniqueConstraintViolationException) throw new Refusal('consent_text_stale')
     throw thrown
   }
-}
-
-/** Whether two versions say the same about safety, in whatever order. */
-function sameSafety(one: readonly ConsentClause[], other: readonly ConsentClause[]): boolean {
-  const safety = (clauses: readonly ConsentClause[]) => JSON.stringify(clauses.filter(clause => clause.safety).map(({ code, title, text }) => [code, title, text]).sort())
-  return safety(one) === safety(other)
 }
 
 export function toConsentTextView(text: ConsentText, savedBy: string | null): ConsentTextView {

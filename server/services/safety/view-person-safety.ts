@@ -22,6 +22,7 @@ export async function viewPersonSafety(em: EntityManager, app: App, actor: Actor
   const text = await newestConsentText(em)
   return {
     ...row,
+    today: now.toISOString(),
     history: history.map(one => ({ ...viewClearance(one, now), withdrawnAt: one.withdrawnAt?.toISOString() ?? null })),
     signed: signed.map(one => ({ version: one.text.$.version, at: one.at.toISOString(), as: one.signedAs, guardian: one.guardian ?? null })),
     sharing: text.choices.map(({ code, text: words }) => ({ code, text: words, allowed: choices.get(code)?.allowed ?? false, at: choices.get(code)?.at.toISOString() ?? null })),
