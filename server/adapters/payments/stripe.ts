@@ -1,5 +1,6 @@
 import { setTimeout as sleep } from 'node:timers/promises'
 import Stripe from 'stripe'
+import { z } from 'zod'
 import { AdapterRefusal } from '../adapter-refusal'
 import type { ChargeState, CheckoutState, PaymentMessage, Payments, RefundState } from './payments'
 
@@ -132,10 +133,10 @@ export function stripePayments(settings: PaySettings, wait: (ms: number) => Prom
         return toMessage(stripe.webhooks.constructEvent(Buffer.from(raw), signature ?? '', settings.webhookSecret, undefined, undefined, now.getTime()))
       }
       catch (thrown) {
-        // Signed and not JSON cannot be the processor's either.
-        if (thrown instanceof Stripe.errors.StripeSignatureVerificationError || thrown instanceof SyntaxError) {
+        if (thrown instanceof Stripe.errors.StripeSignatureVerificationError) {
           throw new AdapterRefusal('signature_invalid', 'This message is not signed by the card processor, was changed on its way, or is too old.')
         }
+        if (thrown instanceof SyntaxError || thrown instanceof z.ZodError) throw new AdapterRefusal('body_not_json', 'This message is signed and is no event of the card processor.')
         throw thrown
       }
     },
@@ -187,13 +188,29 @@ function joinRefunds(charges: Stripe.Charge[], refunds: Stripe.Refund[]): Charge
   }))
 }
 
-function toMessage(event: Stripe.Event): PaymentMessage {
-  // Messages of kinds we never heard of have other members; what is not there is null.
-  const about = event.data.object as { id?: string, object?: string, client_reference_id?: string | null, payment_intent?: string | { id: string } | null, metadata?: Record<string, string> | null }
+/** What we read of a message. Those of kinds we never heard of have other members: what is not there is null. */
+const eventShape = z.object({
+  id: z.string().min(1).max(255),
+  type: z.string().min(1),
+  created: z.number().int(),
+  data: z.object({
+    object: z.object({
+      id: z.string().max(255).nullish(),
+      object: z.string().nullish(),
+      client_reference_id: z.string().nullish(),
+      payment_intent: z.union([z.string(), z.object({ id: z.string() })]).nullish(),
+      metadata: z.object({ payment: z.string().optional() }).nullish(),
+    }),
+  }),
+})
+
+/** @throws {z.ZodError} when it is no event */
+function toMessage(event: unknown): PaymentMessage {
+  const { id, type, created, data: { object: about } } = eventShape.parse(event)
   return {
-    id: event.id,
-    type: event.type,
-    at: toDate(event.created),
+    id,
+    type,
+    at: toDate(created),
     about: about.id ?? null,
     reference: about.client_reference_id ?? about.metadata?.payment ?? null,
     intentId: about.object === 'payment_intent' ? about.id ?? null : idOf(about.payment_intent ?? null),

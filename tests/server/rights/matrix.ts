@@ -1,6 +1,9 @@
+import { BenchPlace } from '#server/db/entities/BenchPlace'
+import { placeToken } from '#server/services/places/place-link'
 import type { Actor } from '#server/utils/actor'
 import { addDays, schoolDay } from '#shared/contract/school-day'
 import { schoolConsent, schoolRubric } from '../review/school'
+import { askedPlace } from './asked-place'
 import { publishedFilm } from './published-film'
 import type { World } from './world'
 
@@ -46,9 +49,46 @@ export const matrix: readonly MatrixRow[] = [
   row('POST /api/auth/{path}', everybody, at('/api/auth/signout', {})),
   row('POST /api/password/forgot', everybody, at('/api/password/forgot', { email: 'nobody@sallowbeck.example' })),
   row('POST /api/password/set', everybody, at('/api/password/set', { token: 'x'.repeat(40), password: 'ten letters and more' })),
+  // Whose message it is its signature says, not a role.
+  row('POST /api/payments/webhook', everybody, at('/api/payments/webhook', {})),
+  row('POST /api/payments/returned', everybody, async (world, owner) => ({ path: '/api/payments/returned', body: { token: placeToken(world.harness.app, await world.harness.app.orm.em.fork().findOneOrFail(BenchPlace, { person: owner.id })) } })),
+
+  // places: who has the mailed link may do what the asker may
+  row('GET /api/courses', everybody, at('/api/courses')),
+  row('GET /api/cohorts/{code}/offer', everybody, async world => ({ path: `/api/cohorts/${(await askedPlace(world)).code}/offer` })),
+  row('POST /api/cohorts/{code}/asks', everybody, async world => ({ path: `/api/cohorts/${(await askedPlace(world)).code}/asks`, body: { name: 'Wen', email: `${crypto.randomUUID()}@sallowbeck.example` } })),
+  row('GET /api/place-links/{token}', everybody, async world => ({ path: `/api/place-links/${(await askedPlace(world)).token}` })),
+  row('POST /api/place-links/{token}/open', everybody, async world => ({ path: `/api/place-links/${(await askedPlace(world)).token}/open`, body: {} })),
+  row('POST /api/place-links/{token}/pass', everybody, async world => ({ path: `/api/place-links/${(await askedPlace(world)).token}/pass`, body: {} })),
+  row('POST /api/place-links/{token}/pay', everybody, async world => ({ path: `/api/place-links/${(await askedPlace(world)).token}/pay`, body: { purpose: 'deposit' } })),
+  row('GET /api/place-links/{token}/receipts/{number}', everybody, async (world) => {
+    const { token, receipt } = await askedPlace(world)
+    return { path: `/api/place-links/${token}/receipts/${receipt}` }
+  }),
+  // the office's places
+  row('GET /api/cohorts', { ...instructors, admin: 'yes' }, at('/api/cohorts')),
+  row('POST /api/cohorts', { ...noRole, admin: 'yes' }, at('/api/cohorts', { code: 'DOR-27', name: 'Dorrow', startsOn: '2027-02-08', endsOn: '2027-05-06', pattern: 'evenings', places: 8, priceMinor: 245_000, depositMinor: 35_000, open: true })),
+  row('POST /api/cohorts/{code}', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/cohorts/${(await askedPlace(world)).code}`, body: { pattern: 'Saturdays' } })),
+  row('GET /api/cohorts/{code}/list', { ...taught, admin: 'yes' }, at('/api/cohorts/ALD-26/list')),
+  row('POST /api/cohorts/{code}/roster/preview', { ...noRole, admin: 'yes' }, at('/api/cohorts/ALD-26/roster/preview', { csv: 'name,email\nWen,wen@sallowbeck.example' })),
+  // A list that was never looked at is refused, which is a yes to the person.
+  row('POST /api/cohorts/{code}/roster', { ...noRole, admin: 'yes' }, at('/api/cohorts/ALD-26/roster', { csv: 'name,email\nWen,wen@sallowbeck.example', seen: 'a'.repeat(64) })),
+  row('GET /api/places', { ...noRole, admin: 'yes' }, at('/api/places')),
+  row('GET /api/places/{id}', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/places/${(await askedPlace(world)).id}` })),
+  row('GET /api/places/{id}/refund-quote', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/places/${(await askedPlace(world, 'deposit-paid')).id}/refund-quote` })),
+  row('POST /api/places/{id}/steps', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/places/${(await askedPlace(world)).id}/steps`, body: { step: 'withdraw-offer' } })),
+  row('POST /api/places/{id}/cancel', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/places/${(await askedPlace(world)).id}/cancel`, body: { cause: 'student', seenMinor: 0 } })),
+  row('POST /api/places/{id}/move', { ...noRole, admin: 'yes' }, async (world) => {
+    const [from, to] = [await askedPlace(world, 'deposit-paid'), await askedPlace(world)]
+    return { path: `/api/places/${from.id}/move`, body: { to: to.code } }
+  }),
+  row('POST /api/places/{id}/order', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/places/${(await askedPlace(world)).id}/order`, body: { organisation: 'Hexley Row Rebuild Ltd', contact: 'Morag Stanyon', email: 'morag@hexley.example', number: crypto.randomUUID(), amountMinor: 245_000 } })),
+  row('POST /api/places/{id}/bank-payments', { ...noRole, admin: 'yes' }, async world => ({ path: `/api/places/${(await askedPlace(world, 'deposit-paid')).id}/bank-payments`, body: { purpose: 'balance', amountMinor: 1000, reference: crypto.randomUUID(), on: '2026-03-01' } })),
+  row('GET /api/sponsors', { ...noRole, admin: 'yes' }, at('/api/sponsors')),
 
   // oneself
   row('GET /api/me', signedIn, at('/api/me')),
+  row('GET /api/me/places', signedIn, at('/api/me/places')),
   row('GET /api/me/sessions', signedIn, at('/api/me/sessions')),
   row('DELETE /api/me/sessions/{id}', { 'nobody': 401, 'student': 404, 'other student': 404, 'alumni': 404, 'instructor': 404, 'other instructor': 404, 'admin': 404, 'safety': 404 }, at('/api/me/sessions/00000000-0000-4000-8000-000000000000')),
   row('POST /api/me/sign-out-everywhere', signedIn, at('/api/me/sign-out-everywhere', {})),
