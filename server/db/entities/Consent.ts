@@ -1,5 +1,5 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
-import { id, instant } from './column'
+import { id, instant, jsonOnce } from './column'
 import { User } from './User'
 
 export interface ConsentClause { code: string, title: string, text: string, /** Changing it asks everybody again. */ safety: boolean }
@@ -11,9 +11,9 @@ export const ConsentText = defineEntity({
   properties: {
     id: id(),
     version: p.integer().unique(),
-    clauses: p.json<ConsentClause[]>().trackChanges(false),
+    clauses: jsonOnce<ConsentClause[]>(),
     /** Sharing people may say yes or no to, any day. */
-    choices: p.json<ConsentChoice[]>().trackChanges(false),
+    choices: jsonOnce<ConsentChoice[]>(),
     /** The oldest version whose ticks still stand: no safety clause changed since. */
     standsFrom: p.integer(),
     savedBy: () => p.manyToOne(User).ref().nullable(),

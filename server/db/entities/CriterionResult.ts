@@ -1,7 +1,7 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
 import type { CriterionResult as Judged } from '../../../shared/domain/rubric/evidence'
 import type { CriterionState } from '../../../shared/domain/rubric/criterion'
-import { id, real } from './column'
+import { id, jsonOnce, real } from './column'
 import { ScoreSet } from './ScoreSet'
 
 /** One judged result of one score set. The machine's state stays; a person's stands beside it in `Override`. */
@@ -20,10 +20,10 @@ export const CriterionResult = defineEntity({
     unit: p.string().length(30),
     expandedUncertainty: real().nullable(),
     pConform: real().nullable(),
-    metalLeft: p.json<Judged['metalLeft']>().trackChanges(false).nullable(),
+    metalLeft: jsonOnce<Judged['metalLeft']>().nullable(),
     text: p.text(),
-    trace: p.json<Judged['trace']>().trackChanges(false),
-    band: p.json<Judged['band']>().trackChanges(false).nullable(),
+    trace: jsonOnce<Judged['trace']>(),
+    band: jsonOnce<Judged['band']>().nullable(),
     typedForPhoto: p.boolean().default(false),
     /** Place in the set, so that pages list results in the rubric's order. */
     position: p.integer(),

@@ -1,6 +1,6 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
 import type { FlowRun, SheetHeader } from '../../../shared/domain/airflow/flow-run'
-import { id, instant } from './column'
+import { id, instant, jsonOnce } from './column'
 import { Submission } from './Submission'
 import { Upload } from './Upload'
 import { User } from './User'
@@ -33,14 +33,14 @@ export const FlowSheetReading = defineEntity({
     version: p.integer(),
     kind: p.enum(['flow', 'plate-log'] as const),
     bench: p.string().length(60).nullable(),
-    header: p.json<SheetHeader>().trackChanges(false),
-    runs: p.json<FlowRun[]>().trackChanges(false),
-    columns: p.json<SheetColumn[]>().trackChanges(false),
-    firstRows: p.json<string[][]>().trackChanges(false),
-    findings: p.json<SheetFinding[]>().trackChanges(false),
-    needs: p.json<SheetNeed[]>().trackChanges(false),
-    plateLog: p.json<unknown>().trackChanges(false).nullable(),
-    answers: p.json<Record<string, string>>().trackChanges(false),
+    header: jsonOnce<SheetHeader>(),
+    runs: jsonOnce<FlowRun[]>(),
+    columns: jsonOnce<SheetColumn[]>(),
+    firstRows: jsonOnce<string[][]>(),
+    findings: jsonOnce<SheetFinding[]>(),
+    needs: jsonOnce<SheetNeed[]>(),
+    plateLog: jsonOnce<unknown>().nullable(),
+    answers: jsonOnce<Record<string, string>>(),
     method: p.string().length(40),
     readAt: instant(),
   },

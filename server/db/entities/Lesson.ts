@@ -13,6 +13,8 @@ export const Lesson = defineEntity({
     module: () => p.manyToOne(CourseModule).ref(),
     /** Ops of the stages that need it. */
     ops: p.array(Number).columnType('integer[]'),
+    /** Grows with every save of a draft and every publishing, so that a save over somebody else's is seen, also across a publishing. */
+    revision: p.integer().default(0),
     createdAt: instant().onCreate(() => new Date()),
   },
 })

@@ -4,13 +4,12 @@ import { id, instant } from './column'
 import { Lesson } from './Lesson'
 import { User } from './User'
 
-/** A lesson as it is being written; one a lesson. `revision` grows with every save, so that a save over somebody else's is seen. */
+/** A lesson as it is being written; one a lesson, at the lesson's `revision`. */
 export const LessonDraft = defineEntity({
   name: 'LessonDraft',
   properties: {
     id: id(),
     lesson: () => p.manyToOne(Lesson).ref().unique(),
-    revision: p.integer(),
     title: p.string().length(160),
     document: p.json<LessonDocument>(),
     savedBy: () => p.manyToOne(User).ref(),

@@ -26,7 +26,6 @@ export const LessonPassage = defineEntity({
   indexes: [
     { properties: ['lesson', 'ordinal'] },
     { name: 'lesson_passage_words', expression: 'create index "lesson_passage_words" on "lesson_passage" using gin ("words")' },
-    { name: 'lesson_passage_letters', expression: 'create index "lesson_passage_letters" on "lesson_passage" using gin ("body" gin_trgm_ops)' },
   ],
 })
 export type LessonPassage = InferEntity<typeof LessonPassage>

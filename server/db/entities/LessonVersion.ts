@@ -1,6 +1,6 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
 import type { LessonDocument } from '../../../shared/contract/lesson-document'
-import { id, instant } from './column'
+import { id, instant, jsonOnce } from './column'
 import { Lesson } from './Lesson'
 import { User } from './User'
 
@@ -13,7 +13,7 @@ export const LessonVersion = defineEntity({
     version: p.integer(),
     title: p.string().length(160),
     /** The published document, checked against the lesson schema. */
-    document: p.json<LessonDocument>().trackChanges(false),
+    document: jsonOnce<LessonDocument>(),
     /** Reading time. */
     minutes: p.integer(),
     whatChanged: p.text(),

@@ -1,5 +1,5 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
-import { id, instant } from './column'
+import { id, instant, jsonOnce } from './column'
 import { User } from './User'
 
 /** The outbox: every message the school sends, its state and the provider's id. */
@@ -16,7 +16,7 @@ export const Mail = defineEntity({
     html: p.text(),
     text: p.text(),
     /** Files that go with it, by their keys in storage. */
-    attachments: p.json<{ filename: string, key: string, contentType: string }[]>().trackChanges(false).nullable(),
+    attachments: jsonOnce<{ filename: string, key: string, contentType: string }[]>().nullable(),
     state: p.enum(['waiting', 'sent', 'dead'] as const).default('waiting'),
     tries: p.integer().default(0),
     messageId: p.string().length(200),

@@ -1,6 +1,6 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
 import type { Cue } from '../../../shared/contract/media'
-import { id, instant } from './column'
+import { id, instant, jsonOnce } from './column'
 import { MediaAsset } from './MediaAsset'
 import { User } from './User'
 
@@ -13,7 +13,7 @@ export const MediaTrack = defineEntity({
     kind: p.enum(['captions', 'chapters'] as const),
     language: p.string().length(12),
     vtt: p.text(),
-    cues: p.json<Cue[]>().trackChanges(false),
+    cues: jsonOnce<Cue[]>(),
     savedBy: () => p.manyToOne(User).ref().nullable(),
     savedAt: instant(),
   },

@@ -1,5 +1,5 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
-import { id, instant, real } from './column'
+import { id, instant, jsonOnce, real } from './column'
 import { ScaleCard } from './ScaleCard'
 import { Submission } from './Submission'
 import { Upload } from './Upload'
@@ -20,7 +20,7 @@ export const Photo = defineEntity({
     /** Spot the want names ("thinnest", "12-6"), when it names one. */
     spot: p.string().length(80).nullable(),
     card: () => p.manyToOne(ScaleCard).ref().nullable(),
-    seatDepth: p.json<{ value: string, unit: string, instrument: string }>().trackChanges(false).nullable(),
+    seatDepth: jsonOnce<{ value: string, unit: string, instrument: string }>().nullable(),
     clockMark: real().nullable(),
     state: p.enum([...photoStates]).default('taken'),
     /** One line that says what to do, when it cannot be used. */

@@ -1,5 +1,5 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
-import { id, instant } from './column'
+import { id, instant, jsonOnce } from './column'
 import { PracticeHead } from './PracticeHead'
 import { Review } from './Review'
 import { User } from './User'
@@ -17,7 +17,7 @@ export const PointRelease = defineEntity({
     /** Evidence rows and versions the release rests on: thousands of ids by the end of a course, so they are loaded only when asked for. */
     restsOn: p.json<unknown>().lazy(true, false),
     /** Conditions the program added ("no more cutting at ..."), with the criterion that a newer accept ends. */
-    conditions: p.json<{ criterion: string, cylinder: number | null, side: string | null, at: string | null, text: string }[]>().trackChanges(false),
+    conditions: jsonOnce<{ criterion: string, cylinder: number | null, side: string | null, at: string | null, text: string }[]>(),
     /** Condition in the instructor's own words. */
     condition: p.text().nullable(),
     /** Set when newer evidence contradicts it. */

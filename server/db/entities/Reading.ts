@@ -1,5 +1,5 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
-import { id, instant, real } from './column'
+import { id, instant, jsonOnce, real } from './column'
 import { Instrument } from './Instrument'
 import { Submission } from './Submission'
 import { User } from './User'
@@ -16,7 +16,7 @@ export const Reading = defineEntity({
     quantity: p.string().length(60),
     cylinder: p.integer().nullable(),
     side: p.enum(['intake', 'exhaust'] as const).nullable(),
-    at: p.json<ReadingAt>().trackChanges(false).nullable(),
+    at: jsonOnce<ReadingAt>().nullable(),
     when: p.enum(['before', 'after'] as const).nullable(),
     /** The figures as they were typed, and their unit. */
     asTyped: p.array(),

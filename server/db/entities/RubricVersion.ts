@@ -1,6 +1,6 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
 import type { Rubric } from '../../../shared/domain/rubric/criterion'
-import { id, instant } from './column'
+import { id, instant, jsonOnce } from './column'
 import { User } from './User'
 
 /** The whole rubric as it stood: stages, points, criteria, bands and texts. Never changed; a change is the next version. */
@@ -10,7 +10,7 @@ export const RubricVersion = defineEntity({
     id: id(),
     version: p.integer().unique(),
     // Never changed, so not compared at every flush: it is the largest thing a request loads.
-    rubric: p.json<Rubric>().trackChanges(false),
+    rubric: jsonOnce<Rubric>(),
     note: p.text().default(''),
     savedBy: () => p.manyToOne(User).ref().nullable(),
     savedAt: instant(),

@@ -1,5 +1,5 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/core'
-import { id, instant, real } from './column'
+import { id, instant, jsonOnce, real } from './column'
 import { PracticeHead } from './PracticeHead'
 import { User } from './User'
 
@@ -23,7 +23,7 @@ export const Submission = defineEntity({
     version: p.integer().default(1),
     state: p.enum([...submissionStates]).default('draft'),
     /** Ports this part covers. */
-    ports: p.json<{ cylinder: number, side: 'intake' | 'exhaust' }[]>().trackChanges(false),
+    ports: jsonOnce<{ cylinder: number, side: 'intake' | 'exhaust' }[]>(),
     note: p.text().default(''),
     startedBy: () => p.manyToOne(User).ref(),
     createdAt: instant(),

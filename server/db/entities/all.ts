@@ -22,6 +22,7 @@ import { LessonNote } from './LessonNote'
 import { LessonPassage } from './LessonPassage'
 import { LessonProgress } from './LessonProgress'
 import { LessonVersion } from './LessonVersion'
+import { LessonWord } from './LessonWord'
 import { Mail } from './Mail'
 import { MediaAsset } from './MediaAsset'
 import { MediaTrack } from './MediaTrack'
@@ -53,7 +54,7 @@ export const entities = [
   Course, CourseModule, Cohort, BenchPlace, CohortStaff, AskTry, Sponsor, PurchaseOrder,
   Payment, PaymentEvent, LedgerLine, Refund, Receipt,
   Consent, ConsentText, SafetyNote, SharingChoice,
-  Lesson, LessonVersion, LessonDraft, LessonPassage, LessonProgress, LessonNote, MediaAsset, MediaTrack, WatchPosition,
+  Lesson, LessonVersion, LessonDraft, LessonPassage, LessonWord, LessonProgress, LessonNote, MediaAsset, MediaTrack, WatchPosition,
   Casting, RubricVersion, PracticeHead, Instrument, ScaleCard,
   Upload, Submission, Photo, Reading, FlowSheet, FlowSheetReading, EvidenceDocument,
   ScoreSet, CriterionResult, Review, Override, PhotoPin, PointRelease, WitnessCall, HeadStop,

@@ -1,4 +1,4 @@
-import { p } from '@mikro-orm/core'
+import { JsonType, p } from '@mikro-orm/core'
 
 /** Primary key made by the application, so that it is known before the insert. */
 export const id = () => p.uuid().primary().onCreate(() => crypto.randomUUID())
@@ -9,5 +9,16 @@ export const real = () => p.float().columnType('double precision')
 /** An instant, kept with its zone. */
 export const instant = () => p.datetime().columnType('timestamptz')
 
-// JSON columns say `.trackChanges(false)`: what is in them is written once with its row, and comparing it at every flush costs more
-// than all the rest of a request.
+/** The ORM otherwise writes every JSON it loads out again, to compare it at the next flush: longer than all the rest of a request. What is written once is never found changed. */
+class WriteOnceJson extends JsonType {
+  override ensureComparable() {
+    return false
+  }
+
+  compareValues() {
+    return true
+  }
+}
+
+/** JSON that is written with its row and never changed. */
+export const jsonOnce = <Value>() => p.type(WriteOnceJson).$type<Value>().trackChanges(false)

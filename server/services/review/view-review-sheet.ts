@@ -2,6 +2,7 @@ import type { EntityManager } from '@mikro-orm/postgresql'
 import { Review } from '#server/db/entities/Review'
 import { feedbackViews } from '#server/services/feedback/feedback-views'
 import { curveSets } from '#server/services/heads/curve-sets'
+import { evidenceViews } from '#server/services/submissions/evidence-views'
 import type { FoundSubmission } from '#server/services/submissions/find-submission'
 import { viewSubmission } from '#server/services/submissions/view-submission'
 import type { Actor } from '#server/utils/actor'
@@ -27,7 +28,7 @@ export async function viewReviewSheet(em: EntityManager, app: App, actor: Actor,
   const verdict = await verdictFor(em, submission, loaded, actor.id, [])
   const tries = await em.find(Review, { submission: { head: head.id, op: submission.op, part: submission.part } }, { populate: ['by', 'submission', 'submission.head'], strategy: 'select-in', orderBy: { at: 'asc', id: 'asc' } })
   return {
-    submission: await withOthersEvidence(em, app, actor, await viewSubmission(em, app, actor, id), loaded),
+    submission: await withOthersEvidence(em, actor, await viewSubmission(em, app, actor, id), loaded),
     criteria,
     proposedFeedback: proposedFeedback(head.student.$.name, criteria),
     curves: await curveSets(em, head),
@@ -54,16 +55,15 @@ export async function viewReviewSheet(em: EntityManager, app: App, actor: Actor,
 }
 
 /** Stages without a point bring their proof to the point that decides them. */
-async function withOthersEvidence(em: EntityManager, app: App, actor: Actor, view: SubmissionView, { others }: PointCase): Promise<SubmissionView> {
-  const all = { ...view }
-  for (const other of others) {
-    const { photos, readings, sheets, documents } = await viewSubmission(em, app, actor, other.id)
-    all.photos = [...all.photos, ...photos]
-    all.readings = [...all.readings, ...readings]
-    all.sheets = [...all.sheets, ...sheets]
-    all.documents = [...all.documents, ...documents]
+async function withOthersEvidence(em: EntityManager, actor: Actor, view: SubmissionView, { others }: PointCase): Promise<SubmissionView> {
+  const more = await evidenceViews(em, actor, { studentId: view.head.student.id, taught: true }, others.map(other => other.id))
+  return {
+    ...view,
+    photos: [...view.photos, ...more.photos],
+    readings: [...view.readings, ...more.readings],
+    sheets: [...view.sheets, ...more.sheets],
+    documents: [...view.documents, ...more.documents],
   }
-  return all
 }
 
 function maySign(actor: Actor, submission: FoundSubmission, mayPoints: ReadonlySet<string>, { signedBefore, others }: PointCase): ReviewSheetView['maySign'] {

@@ -1,23 +1,15 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
-import { EvidenceDocument } from '#server/db/entities/EvidenceDocument'
-import { FlowSheetReading } from '#server/db/entities/FlowSheet'
-import { Photo } from '#server/db/entities/Photo'
 import { PracticeHead } from '#server/db/entities/PracticeHead'
-import { Reading } from '#server/db/entities/Reading'
 import { Submission } from '#server/db/entities/Submission'
-import { viewDocument } from '#server/services/documents/view-document'
-import { viewSheet } from '#server/services/flow-sheets/view-sheet'
 import { headSummary } from '#server/services/heads/head-summary'
 import { loadRoute } from '#server/services/heads/route-state'
 import { visibleHeads } from '#server/services/heads/visible-heads'
-import { maySeePhoto } from '#server/services/photos/photo-rights'
-import { viewPhoto } from '#server/services/photos/view-photo'
-import { viewReading } from '#server/services/readings/view-reading'
 import { cautionLines } from '#server/services/school/stage-words'
 import type { Actor } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
 import type { SubmissionView } from '#shared/contract/views'
 import { pointName } from '#shared/domain/rubric/route-state'
+import { evidenceViews } from './evidence-views'
 import { findSubmission, type FoundSubmission } from './find-submission'
 import { gatherEvidence } from './gather-evidence'
 import { submissionCriteria } from './submission-criteria'
@@ -36,13 +28,6 @@ export async function viewSubmission(em: EntityManager, app: App, actor: Actor, 
   const teaches = await em.count(PracticeHead, { $and: [{ id: head.id }, await visibleHeads(em, app, actor, 'teach')] }) > 0
   const route = await loadRoute(em, app, head)
   const { evidence } = await gatherEvidence(em, submission)
-  const photos = (await em.find(Photo, { submission: submission.id, setAsideAt: null }, { populate: ['addedBy'], orderBy: { takenAt: 'asc', id: 'asc' } }))
-    .filter(photo => maySeePhoto(actor, { view: photo.view, studentId: head.student.id, taught: teaches }))
-  const readings = await em.find(Reading, { submission: submission.id }, { populate: ['instrument', 'addedBy'], orderBy: { takenAt: 'asc', recordedAt: 'asc' } })
-  const sheetReadings = await em.find(FlowSheetReading, { sheet: { submission: submission.id } }, { populate: ['sheet', 'sheet.upload'], orderBy: { sheet: { addedAt: 'asc' }, version: 'desc' } })
-  const sheets = sheetReadings.filter((one, index) => sheetReadings.findIndex(other => other.sheet.id === one.sheet.id) === index)
-  const documents = await em.find(EvidenceDocument, { submission: submission.id, setAsideAt: null }, { populate: ['upload'], orderBy: { addedAt: 'asc' } })
-  const mayOpen = teaches || head.student.id === actor.id
 
   return {
     id: submission.id,
@@ -63,10 +48,7 @@ export async function viewSubmission(em: EntityManager, app: App, actor: Actor, 
     askedAt: submission.askedAt?.toISOString() ?? null,
     ports: submission.ports,
     acidCleaned: head.acidCleaned ?? null,
-    photos: photos.map(viewPhoto),
-    readings: readings.map(viewReading),
-    sheets: sheets.map(viewSheet),
-    documents: documents.map(one => ({ ...viewDocument(one), ...(mayOpen ? {} : { url: null }) })),
+    ...await evidenceViews(em, actor, { studentId: head.student.id, taught: teaches }, [submission.id]),
     wanted: wantedViews(rubric, evidence),
     criteria: await submissionCriteria(em, submission),
     caution: { lines: cautionLines(submission.op) },
