@@ -5,6 +5,7 @@ import { addDays, schoolDay } from '#shared/contract/school-day'
 import { schoolConsent, schoolRubric } from '../review/school'
 import { askedPlace } from './asked-place'
 import { publishedFilm } from './published-film'
+import { refundedPlace } from './refunded-place'
 import type { World } from './world'
 
 /*
@@ -88,6 +89,19 @@ export const matrix: readonly MatrixRow[] = [
 
   // oneself
   row('GET /api/me', signedIn, at('/api/me')),
+  // money
+  row('GET /api/ledger', { ...noRole, admin: 'yes' }, at('/api/ledger')),
+  row('GET /api/ledger/csv', { ...noRole, admin: 'yes' }, at('/api/ledger/csv')),
+  row('GET /api/money/open', { ...noRole, admin: 'yes' }, at('/api/money/open')),
+  row('GET /api/receipts/{number}/file', { ...noRole, 'student': 'yes', 'other student': 404, 'alumni': 'yes', 'admin': 'yes' }, async (world, owner) => ({ path: `/api/receipts/${(await refundedPlace(world, owner)).receipt}/file` })),
+  row('POST /api/places/{id}/refunds', { ...noRole, admin: 'yes' }, async (world, owner) => ({ path: `/api/places/${(await refundedPlace(world, owner)).id}/refunds`, body: { amountMinor: 100, reason: 'A pound.' } })),
+  row('POST /api/places/{id}/bank-refunds', { ...noRole, admin: 'yes' }, async (world, owner) => {
+    const { id, refund } = await refundedPlace(world, owner)
+    return { path: `/api/places/${id}/bank-refunds`, body: { refundId: refund, reference: crypto.randomUUID(), on: '2026-03-01' } }
+  }),
+  // It goes by bank, so the processor cannot be asked again, which is a yes to the person.
+  row('POST /api/refunds/{id}/again', { ...noRole, admin: 'yes' }, async (world, owner) => ({ path: `/api/refunds/${(await refundedPlace(world, owner)).refund}/again`, body: {} })),
+
   row('GET /api/me/places', signedIn, at('/api/me/places')),
   row('GET /api/me/sessions', signedIn, at('/api/me/sessions')),
   row('DELETE /api/me/sessions/{id}', { 'nobody': 401, 'student': 404, 'other student': 404, 'alumni': 404, 'instructor': 404, 'other instructor': 404, 'admin': 404, 'safety': 404 }, at('/api/me/sessions/00000000-0000-4000-8000-000000000000')),
