@@ -12,6 +12,7 @@ const settleMs = 1500
  */
 export function useLessonProgress(slug: string, lesson: Ref<LessonView | null | undefined>, article: Ref<HTMLElement | null>) {
   const api = useApi()
+  const call = $fetch as unknown as (path: string, options: Record<string, unknown>) => Promise<unknown>
   const here = ref<string | null>(null)
   const finished = ref(false)
   const finishing = ref(false)
@@ -38,9 +39,10 @@ export function useLessonProgress(slug: string, lesson: Ref<LessonView | null | 
     clearTimeout(timer)
     if (!moved || here.value === told || !here.value) return
     const anchor = here.value
-    const answer = await api.post(`/api/lessons/${slug}/progress`, { anchor, finished: finished.value })
-    // Without a network it is told when the next heading is, or when the page is left.
-    if (answer.ok) told = anchor
+    // Sent so that it arrives although the page is being left. Without a network it is told when the next heading is.
+    await call(`/api/lessons/${slug}/progress`, { method: 'POST', body: { anchor, finished: finished.value }, keepalive: true, retry: false }).then(() => {
+      told = anchor
+    }, () => undefined)
   }
 
   function settle() {
