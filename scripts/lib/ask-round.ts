@@ -2,12 +2,11 @@ import { Agent, request } from 'node:http'
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { AuditEvent } from '#server/db/entities/AuditEvent'
 import { AuditLink } from '#server/db/entities/AuditLink'
-import { BenchPlace } from '#server/db/entities/BenchPlace'
+import { BenchPlace, takingStates } from '#server/db/entities/BenchPlace'
 import { Cohort } from '#server/db/entities/Cohort'
 import { emptyPlace } from '#server/services/places/empty-place'
 import { sealAudit } from '#server/services/audit/seal-audit'
 import { placeToken } from '#server/services/places/place-link'
-import { takingStates } from '#server/services/places/place-states'
 import type { App } from '#server/utils/app'
 
 export interface AskRound {

@@ -6,6 +6,9 @@ import { User } from './User'
 export const placeStates = ['asked', 'offered', 'deposit-paid', 'confirmed', 'here', 'finished', 'waiting-list', 'moved', 'cancelled', 'stopped'] as const
 export type PlaceState = (typeof placeStates)[number]
 
+/** States that take a bench: only these count against the cohort's number (handbook 5.4). */
+export const takingStates: readonly PlaceState[] = ['offered', 'deposit-paid', 'confirmed', 'here']
+
 /**
  * Somebody's place in a cohort, from the ask on. Alumni are students whose place is `finished`.
  *

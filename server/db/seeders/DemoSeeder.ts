@@ -2,10 +2,9 @@ import { ref, type EntityManager } from '@mikro-orm/core'
 import { Seeder } from '@mikro-orm/seeder'
 import type { CastingCard } from '../../../shared/domain/geometry/casting'
 import type { RubricPoint } from '../../../shared/domain/rubric/criterion'
-import { BenchPlace, type PlaceState } from '../entities/BenchPlace'
 import { Casting } from '../entities/Casting'
 import { Clearance } from '../entities/Clearance'
-import { Cohort } from '../entities/Cohort'
+import type { Cohort } from '../entities/Cohort'
 import { CohortStaff } from '../entities/CohortStaff'
 import { Instrument } from '../entities/Instrument'
 import { MediaAsset } from '../entities/MediaAsset'
@@ -17,6 +16,7 @@ import { User, type Role } from '../entities/User'
 import { readContent, type SchoolContent } from './content'
 import { makeConsents } from './demo-consents'
 import { makeLessons } from './demo-lessons'
+import { makeCohorts, makePlaces } from './demo-places'
 
 /** What the seeder is told: the school's instant, and the hash of the one password everybody has. */
 export interface DemoStart { until: Date, passwordHash: string, seededAt: Date }
@@ -37,7 +37,7 @@ export class DemoSeeder extends Seeder<Partial<DemoStart>> {
     const content = readContent()
     const { rubric } = content
     const people = makePeople(em, content, passwordHash, until)
-    const cohorts = makeCohorts(em, content)
+    const cohorts = makeCohorts(em, content, until)
     const clips = await em.find(MediaAsset, { name: { $ne: null } })
     const course = makeLessons(em, content, new Map(clips.map(one => [one.name ?? '', one.id])), instant('2025-09-01'))
     for (const cohort of cohorts.values()) cohort.course = ref(course)
@@ -80,42 +80,6 @@ function makePeople(em: EntityManager, { scenario }: SchoolContent, passwordHash
     ...scenario.students.map(({ name }) => make(name, ['student'])),
     ...scenario.alumni.map(({ name }) => make(name, ['student'])),
   ])
-}
-
-function makeCohorts(em: EntityManager, { scenario, start }: SchoolContent): Cohorts {
-  return new Map([...start.earlierCohorts, ...scenario.cohorts].map(({ code, name, start: startsOn, end: endsOn, pattern, places }) =>
-    [code, em.create(Cohort, { code, name, startsOn, endsOn, pattern, places, createdAt: new Date(instant(startsOn).getTime() - 180 * day) })]))
-}
-
-function makePlaces(em: EntityManager, { scenario, start }: SchoolContent, people: People, cohorts: Cohorts, until: Date): void {
-  const place = (name: string, code: string, state: PlaceState, slot: number | null) => {
-    const cohort = get(cohorts, code)
-    const finishedAt = state === 'finished' ? instant(cohort.endsOn) : null
-    em.create(BenchPlace, { cohort, person: get(people, name), state, slot, createdAt: new Date(instant(cohort.startsOn).getTime() - 90 * day), finishedAt })
-  }
-  /** Of somebody who neither moved nor cancelled: paid before the start, here while it runs, finished after. */
-  const usual = (code: string): PlaceState => {
-    const { startsOn, endsOn } = get(cohorts, code)
-    return until < instant(startsOn) ? 'confirmed' : until.getTime() < instant(endsOn).getTime() + day ? 'here' : 'finished'
-  }
-  const taken = new Map<string, number>()
-  for (const { name, cohort, moved_to: movedTo } of scenario.students) {
-    const moved = start.moved[name]
-    if (moved && movedTo && until >= new Date(moved.at)) {
-      place(name, cohort, 'moved', null)
-      place(name, movedTo, 'deposit-paid', moved.slot)
-    }
-    else {
-      const slot = start.students[name]?.slot ?? (taken.get(cohort) ?? 0) + 1
-      taken.set(cohort, slot)
-      place(name, cohort, moved ? 'deposit-paid' : usual(cohort), slot)
-    }
-  }
-  for (const { name, cohort } of scenario.alumni) {
-    const slot = (taken.get(cohort) ?? 0) + 1
-    taken.set(cohort, slot)
-    place(name, cohort, usual(cohort), slot)
-  }
 }
 
 /** Instructors of every cohort. They keep its heads for a year after its end, to answer for results. */

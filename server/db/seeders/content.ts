@@ -14,6 +14,8 @@ const cohort = z.object({ code: z.string(), name: z.string(), start: date, end: 
 const scenarioShape = z.object({
   school: z.object({ name: z.string(), short: z.string(), strapline: z.string(), place: z.string(), currency: z.string(), timezone: z.string(), bench_places_per_cohort: z.number().int(), flow_benches: z.array(z.string()) }),
   staff: z.array(z.object({ name: z.string(), role: z.string(), signs: z.array(z.string()).default([]), posts: z.array(post).default([]), stands_in_for: z.array(post).default([]) })),
+  sponsor: z.object({ organisation: z.string(), contact: z.string(), sponsors: z.array(z.string()) }),
+  prices: z.object({ course_full: z.number(), place_deposit: z.number(), alumni_access_years_included: z.number().int(), sponsor_invoice_terms_days: z.number().int() }),
   cohorts: z.array(cohort),
   students: z.array(z.object({ name: z.string(), cohort: z.string(), head: z.string().nullable(), moved_to: z.string().optional() })),
   alumni: z.array(z.object({ name: z.string(), cohort: z.string() })),
@@ -23,7 +25,10 @@ const startShape = z.object({
   password: z.string(),
   earlierCohorts: z.array(cohort),
   students: z.record(z.object({ slot: z.number().int().optional(), firstCylinder: z.number().int(), second: z.object({ number: z.string(), firstCylinder: z.number().int(), receivedAt: z.string() }).optional() })),
-  moved: z.record(z.object({ at: z.string(), slot: z.number().int() })),
+  moved: z.record(z.object({ at: z.string(), slot: z.number().int(), depositPaidOn: date })),
+  /** Balances that came late, and in what parts. */
+  lateBalances: z.record(z.array(z.object({ on: date, minor: z.number().int() }))),
+  orders: z.record(z.object({ number: z.string(), receivedOn: date, paidOn: date, email: z.string() })),
   clearances: z.array(z.string()),
   safety: z.record(z.object({ shares: z.array(z.string()).default([]), firstAid: z.string().default(''), bootSize: z.string().default('') })),
   scaleCards: z.array(z.object({ number: z.string(), barXMm: z.number(), barYMm: z.number(), thicknessMm: z.number() })),

@@ -1,5 +1,5 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
-import { takingStates } from './place-states'
+import { takingStates } from '#server/db/entities/BenchPlace'
 
 export interface PlaceCount { taken: number, waiting: number }
 

@@ -1,7 +1,6 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
-import { BenchPlace } from '#server/db/entities/BenchPlace'
+import { BenchPlace, takingStates } from '#server/db/entities/BenchPlace'
 import type { Cohort } from '#server/db/entities/Cohort'
-import { takingStates } from './place-states'
 
 /** Benches of a cohort that nobody has, smallest number first. The cohort is held by the caller, or the answer is old at once. */
 export async function freeSlots(tx: EntityManager, cohort: Cohort): Promise<number[]> {

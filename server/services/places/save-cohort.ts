@@ -1,6 +1,6 @@
 import { UniqueConstraintViolationException } from '@mikro-orm/core'
 import type { EntityManager } from '@mikro-orm/postgresql'
-import { BenchPlace } from '#server/db/entities/BenchPlace'
+import { BenchPlace, takingStates } from '#server/db/entities/BenchPlace'
 import { Cohort } from '#server/db/entities/Cohort'
 import { Course } from '#server/db/entities/Course'
 import type { Actor } from '#server/utils/actor'
@@ -11,7 +11,6 @@ import type { CohortChange, CohortInput, CohortRow } from '#shared/contract/plac
 import { countPlaces } from './count-places'
 import { toCohortRow } from './list-cohorts'
 import { lockCohort } from './lock-place'
-import { takingStates } from './place-states'
 import { settleOffers } from './settle-offers'
 
 function check({ startsOn, endsOn, priceMinor, depositMinor }: Pick<Cohort, 'startsOn' | 'endsOn' | 'priceMinor' | 'depositMinor'>): void {
