@@ -25,7 +25,7 @@ export function placeTone(state: PlaceState): 'plain' | 'layout' | 'outline' {
 
 /** What kind of line stands in the ledger, as the office says it. */
 export function ledgerWords(kind: string, purpose: string): string {
-  const kinds: Record<string, string> = { 'card': 'by card', 'bank': 'by bank', 'refund': 'given back to the card', 'bank-refund': 'given back by bank', 'moved-in': 'moved here', 'moved-out': 'moved on' }
+  const kinds: Record<string, string> = { 'card': 'by card', 'bank': 'by bank', 'card-refund': 'given back to the card', 'bank-refund': 'given back by bank', 'moved-in': 'moved here', 'moved-out': 'moved on' }
   const what = purpose.charAt(0).toUpperCase() + purpose.slice(1).replaceAll('-', ' ')
   return `${what} ${kinds[kind] ?? kind.replaceAll('-', ' ')}`
 }
