@@ -35,3 +35,18 @@ export const trackFileQuery = z.object({ language })
 
 export const positionInput = z.object({ seconds: z.number().finite().min(0).max(86_400), finished: z.boolean().default(false) }).strict()
 export type PositionInput = z.infer<typeof positionInput>
+
+/**
+ * A picture or film on its way to the school, as a screen draws it. `reading`: its SHA-256 is being made. `checking`: everything was
+ * sent, and the school reads it once more from end to end.
+ */
+export interface MediaSending {
+  phase: 'none' | 'reading' | 'sending' | 'paused' | 'finishing' | 'checking' | 'done' | 'refused'
+  filename: string
+  /** 0 to 1, of what `phase` does. */
+  share: number
+  /** Why it was refused, or why it waits. */
+  sentence: string | null
+  /** Files begun on this device and not yet whole: choose them again to go on. */
+  unfinished: string[]
+}

@@ -6,6 +6,8 @@ import type { Actor } from '#server/utils/actor'
 import { recordEvent } from '#server/utils/record-event'
 import { Refusal } from '#server/utils/refusal'
 import type { MediaView, TrackInput } from '#shared/contract/media'
+import { rebuildPassages } from '#server/services/lessons/rebuild-passages'
+import { lessonsShowing } from './lessons-showing'
 import { readTrack } from './read-track'
 import { viewMedia } from './view-media'
 
@@ -33,6 +35,7 @@ export async function saveTrack(em: EntityManager, actor: Actor, id: string, inp
     recordEvent(tx, { actor: actor.id, action: 'track-saved', subject: `media:${id}`, detail: { kind, language, cues: cues.length } })
     await tx.flush()
     if (before) await tx.refresh(before)
+    if (kind === 'captions') for (const lesson of await lessonsShowing(tx, id)) await rebuildPassages(tx, lesson)
     const [view] = await viewMedia(tx, actor.id, [asset])
     if (!view) throw new Error(`media ${id} has a track and is not there`)
     return view

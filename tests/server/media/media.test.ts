@@ -1,3 +1,4 @@
+import { ref } from '@mikro-orm/core'
 import { createHash, randomBytes, randomUUID } from 'node:crypto'
 import { readFileSync } from 'node:fs'
 import sharp from 'sharp'
@@ -7,6 +8,7 @@ import { Cohort } from '#server/db/entities/Cohort'
 import { Course } from '#server/db/entities/Course'
 import { CourseModule } from '#server/db/entities/CourseModule'
 import { Lesson } from '#server/db/entities/Lesson'
+import { LessonPassage } from '#server/db/entities/LessonPassage'
 import { LessonVersion } from '#server/db/entities/LessonVersion'
 import { MediaAsset } from '#server/db/entities/MediaAsset'
 import { Upload } from '#server/db/entities/Upload'
@@ -50,15 +52,17 @@ async function place(person: string, change: { state: 'here' | 'finished' | 'can
   })
 }
 
-/** Publishes a lesson that shows this picture or film. */
+/** Publishes a lesson that shows this picture or film; of the course of everybody's cohort unless said. */
 let lessons = 40
-async function publish(asset: string): Promise<void> {
+async function publish(asset: string, code = 'porting'): Promise<string> {
   lessons += 1
-  await school.em().transactional(async (tx) => {
-    const course = await tx.findOne(Course, { code: 'porting' }) ?? tx.create(Course, { code: 'porting', title: 'Porting', summary: '', createdAt: school.now() })
+  return school.em().transactional(async (tx) => {
+    const course = await tx.findOne(Course, { code }) ?? tx.create(Course, { code, title: 'Porting', summary: '', createdAt: school.now() })
+    if (code === 'porting') (await tx.findOneOrFail(Cohort, school.cohortId)).course = ref(course)
     const module = await tx.findOne(CourseModule, { course, number: 2 }) ?? tx.create(CourseModule, { course, number: 2, title: 'Lines and shields', outcome: '', gates: [] })
     const lesson = tx.create(Lesson, { number: lessons, slug: `lesson-${lessons}`, title: 'Dummy valves', module, ops: [50], createdAt: school.now() })
-    tx.persist(tx.create(LessonVersion, { lesson, version: 1, title: 'Dummy valves', minutes: 1, document: { type: 'doc', content: [{ type: 'caution', content: [{ type: 'clip', attrs: { asset, start: null, end: null, caption: '' } }] }] }, whatChanged: 'First', why: 'First', publishedBy: null, publishedAt: school.now() }))
+    tx.persist(tx.create(LessonVersion, { lesson, version: 1, title: 'Dummy valves', minutes: 1, document: { type: 'doc', content: [{ type: 'caution', content: [{ type: 'clip', attrs: { asset, start: 0, end: null, caption: '' } }] }] }, whatChanged: 'First', why: 'First', publishedBy: null, publishedAt: school.now() }))
+    return lesson.id
   })
 }
 
@@ -198,6 +202,7 @@ describe('a film in parts', () => {
 
 describe('who sees what', () => {
   it('shows a student what a published lesson shows, and nothing else', async () => {
+    await publish((await add(film)).body.id)
     const { body } = await add(film)
     expect(await imre.get(`/api/media/${body.id}`)).toMatchObject({ status: 404, body: { code: 'media_not_found' } })
     await publish(body.id)
@@ -214,13 +219,32 @@ describe('who sees what', () => {
     const freya = await school.person(`Freya ${randomUUID().slice(0, 4)}`, ['student'])
     const caller = await api.as(freya)
     const status = async () => (await caller.get(`/api/media/${body.id}/file`)).status
-    expect(await status()).toBeGreaterThanOrEqual(403)
+    expect(await caller.get(`/api/media/${body.id}/file`)).toMatchObject({ status: 403, body: { code: 'lessons_not_open' } })
     await place(freya.id, { state: 'finished', accessUntil: new Date(school.now().getTime() + 60_000) })
     expect(await status()).toBe(302)
     await place(freya.id, { state: 'finished', accessUntil: new Date(school.now().getTime() - 1000) })
-    expect(await status()).toBeGreaterThanOrEqual(403)
+    expect(await caller.get(`/api/media/${body.id}/file`)).toMatchObject({ status: 403, body: { code: 'access_ended' } })
     await place(freya.id, { state: 'cancelled' })
-    expect(await status()).toBeGreaterThanOrEqual(403)
+    expect(await status()).toBe(403)
+  })
+
+  it('keeps the films of a course from whoever is not in it', async () => {
+    const { body } = await add(film)
+    await publish(body.id, 'another-course')
+    expect(await imre.get(`/api/media/${body.id}`)).toMatchObject({ status: 404, body: { code: 'media_not_found' } })
+    expect(await imre.post(`/api/media/${body.id}/position`, { seconds: 1 })).toMatchObject({ status: 404, body: { code: 'media_not_found' } })
+    expect((await hanne.get(`/api/media/${body.id}`)).status).toBe(200)
+  })
+
+  it('finds new captions of a published film at once, and no longer the old', async () => {
+    const { body } = await add(film)
+    const lesson = await publish(body.id)
+    const say = (words: string) => hanne.post(`/api/media/${body.id}/tracks`, { kind: 'captions', vtt: `WEBVTT\n\n00:00.500 --> 00:01.000\n${words}\n` })
+    const spoken = async () => (await school.em().find(LessonPassage, { lesson, kind: 'caption' })).map(one => [one.clip?.id, one.fromMs, one.body])
+    await say('A lip at twelve')
+    expect(await spoken()).toEqual([[body.id, 500, 'A lip at twelve']])
+    await say('A lip at six')
+    expect(await spoken()).toEqual([[body.id, 500, 'A lip at six']])
   })
 
   it('lists the newest first, a page at a time, and finds by title', async () => {

@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto'
+import { ref } from '@mikro-orm/core'
 import { BenchPlace } from '#server/db/entities/BenchPlace'
 import { Cohort } from '#server/db/entities/Cohort'
 import { Course } from '#server/db/entities/Course'
@@ -22,7 +23,9 @@ export async function publishedFilm({ harness, school, bettany, freya }: World):
     await tx.nativeUpdate(BenchPlace, { person: freya.id, state: 'finished' }, { accessUntil: new Date(school.now().getTime() + 3600_000) })
     const asset = tx.create(MediaAsset, { id, kind: 'video', title: 'Scribing', name: null, upload: null, key, contentType: 'video/mp4', bytes: 6, width: null, height: null, durationSeconds: 2, state: 'ready', problem: null, addedBy: null, addedAt: school.now() })
     tx.create(MediaTrack, { asset, kind: 'captions', language: 'en', vtt: 'WEBVTT\n\n00:00.000 --> 00:01.000\nUpright\n', cues: [{ fromMs: 0, toMs: 1000, text: 'Upright' }], savedBy: null, savedAt: school.now() })
-    const course = await tx.findOne(Course, { code: 'films' }) ?? tx.create(Course, { code: 'films', title: 'Films', summary: '', createdAt: school.now() })
+    const cohort = await tx.findOneOrFail(Cohort, school.cohortId, { populate: ['course'] })
+    const course = cohort.course?.$ ?? tx.create(Course, { code: 'films', title: 'Films', summary: '', createdAt: school.now() })
+    cohort.course = ref(course)
     const module = await tx.findOne(CourseModule, { course, number: 1 }) ?? tx.create(CourseModule, { course, number: 1, title: 'Lines', outcome: '', gates: [] })
     const number = 1000 + await tx.count(Lesson)
     const lesson = tx.create(Lesson, { number, slug: `film-${number}`, title: 'Scribing', module, ops: [40], createdAt: school.now() })
