@@ -14,6 +14,7 @@ const zones = [
   { target: './shared/domain/airflow', from: './shared/domain/rubric', message: 'airflow does not judge; rubric does.' },
   { target: './shared/domain/money', from: ['./shared/domain'], except: ['./money'], message: 'money is reckoned by itself: it knows nothing of iron.' },
   { target: ['./shared/domain/units', './shared/domain/uncertainty', './shared/domain/geometry', './shared/domain/airflow', './shared/domain/rubric'], from: './shared/domain/money', message: 'What is measured and judged knows nothing of money.' },
+  { target: ['./shared/contract', './shared/domain'], from: './shared/lesson', message: 'shared/lesson carries an editor\'s grammar; what every page loads does not.' },
   { target: app, from: ['./server', './scripts'], message: 'Pages reach the server through /api, and share types through shared/contract.' },
   { target: './server', from: [...app, './scripts', './tests'], message: 'The server does not import the Vue side, scripts or tests.' },
   { target: './server/api', from: ['./server/db', './server/jobs', './server/adapters'], message: 'A route calls a service; it does not query.' },

@@ -1,4 +1,5 @@
-import type { BenchView, FeedbackView, LessonSummary, Page, QueueItem, SubmissionView } from '../../shared/contract/views'
+import type { LessonSummary } from '../../shared/contract/lessons'
+import type { BenchView, FeedbackView, Page, QueueItem, SubmissionView } from '../../shared/contract/views'
 import { Problem } from '../lib/problem'
 import type { Visitor } from './visitor'
 

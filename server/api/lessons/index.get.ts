@@ -3,5 +3,5 @@ import { defineRoute } from '#server/utils/define-route'
 
 export default defineRoute({
   access: ['student', 'instructor', 'admin', 'safety'],
-  summary: 'The lessons of the course, in order.',
-}, async ({ em }) => listLessons(em))
+  summary: 'The lessons the caller may read, in order, each at the version they read; instructors see unpublished ones too.',
+}, async ({ em, app, actor }) => listLessons(em, app, actor))

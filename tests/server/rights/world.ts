@@ -1,4 +1,5 @@
 import { createHash, randomUUID } from 'node:crypto'
+import { Clearance } from '#server/db/entities/Clearance'
 import { HeadStop, WitnessCall } from '#server/db/entities/PointRelease'
 import { Mail } from '#server/db/entities/Mail'
 import { PracticeHead } from '#server/db/entities/PracticeHead'
