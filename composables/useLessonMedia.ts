@@ -23,6 +23,12 @@ export function useLessonMedia() {
     answers.forEach((answer, at) => !answer.ok && answer.failure.status === 0 && asked.delete(missing[at] ?? ''))
   }
 
+  /** Asks once more for what may have changed. */
+  function again(ids: readonly string[]) {
+    for (const id of ids) asked.delete(id)
+    return need(ids)
+  }
+
   async function find(words: string, kind: 'image' | 'video'): Promise<MediaView[]> {
     const answer = await api.get<Page<MediaView>>(`/api/media?kind=${kind}${words ? `&q=${encodeURIComponent(words)}` : ''}`)
     if (!answer.ok) return []
@@ -30,5 +36,5 @@ export function useLessonMedia() {
     return answer.value.items
   }
 
-  return { known, need, find, keep }
+  return { known, need, again, find, keep }
 }

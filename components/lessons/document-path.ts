@@ -17,18 +17,6 @@ export function positionOf(document: Node, path: string): number | null {
   return position
 }
 
-/** Ids of the pictures and films a document shows. */
-export function mediaOf(document: LessonDocument): string[] {
-  const ids = new Set<string>()
-  const visit = (node: LessonNode): void => {
-    const asset = node.attrs?.asset
-    if (typeof asset === 'string' && asset) ids.add(asset)
-    node.content?.forEach(visit)
-  }
-  visit(document)
-  return [...ids]
-}
-
 /** The document without the empty lines an editor leaves at its end; a lesson with nothing in it keeps one. */
 export function withoutEmptyEnd(document: LessonDocument): LessonDocument {
   const content = [...(document.content ?? [])]

@@ -2,7 +2,7 @@ import { mountSuspended } from '@nuxt/test-utils/runtime'
 import { describe, expect, it } from 'vitest'
 import Conflict from '~/components/lessons/Conflict.vue'
 import { compareLines, linesOf } from '~/components/lessons/compare-lines'
-import { mediaOf, withoutEmptyEnd } from '~/components/lessons/document-path'
+import { withoutEmptyEnd } from '~/components/lessons/document-path'
 import type { LessonDocument, LessonNode } from '#shared/contract/lesson-document'
 
 const words = (text: string): LessonNode => ({ type: 'text', text })
@@ -55,8 +55,5 @@ describe('what an editor needs of a document', () => {
     expect(withoutEmptyEnd(doc(paragraph('a'), paragraph(''), paragraph(''))).content).toEqual([paragraph('a')])
     expect(withoutEmptyEnd(doc(paragraph(''))).content).toEqual([paragraph('')])
     expect(withoutEmptyEnd(doc(paragraph(''), paragraph('a'))).content).toHaveLength(2)
-  })
-  it('finds every picture and film once, also inside steps', () => {
-    expect(mediaOf(doc({ type: 'figure', attrs: { asset: 'a' } }, { type: 'steps', content: [{ type: 'step', content: [{ type: 'clip', attrs: { asset: 'b' } }, { type: 'figure', attrs: { asset: 'a', drawing: null } }] }] }, { type: 'figure', attrs: { asset: null, drawing: 'bowl' } }))).toEqual(['a', 'b'])
   })
 })
