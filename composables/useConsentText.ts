@@ -10,7 +10,8 @@ type Draft = Pick<ConsentTextInput, 'clauses' | 'choices'>
 /** The safety form's text as its next version is being written. */
 export function useConsentText() {
   const api = useApi()
-  const { data: text, failure, loading, refresh } = useRead<ConsentTextView>('/api/consent/text')
+  // In the browser alone: what is typed into lives there.
+  const { data: text, failure, refresh } = useRead<ConsentTextView>('/api/consent/text', { later: true })
   const draft = ref<Draft>({ clauses: [], choices: [] })
   const busy = ref(false)
   const refused = ref<Failure | null>(null)
@@ -40,5 +41,5 @@ export function useConsentText() {
   function removeClause(at: number) {
     draft.value.clauses.splice(at, 1)
   }
-  return { text, failure, loading, refresh, draft, changed, asksAgain, busy, refused, said, save, addClause, removeClause }
+  return { text, failure, refresh, draft, changed, asksAgain, busy, refused, said, save, addClause, removeClause }
 }

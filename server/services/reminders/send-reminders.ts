@@ -90,7 +90,7 @@ async function letterOf(em: EntityManager, app: App, { place, of }: LoadedRemind
     case 'alumni-ending': return alumniEnding({ first, until: reminder.on, price: { minor: renewalMinor, currency: cohort.currency }, url: placeLink(app, place) })
     case 'welcome': {
       const [lesson] = await em.find(Lesson, {}, { orderBy: { number: 'asc' }, limit: 1 })
-      const [head] = place.person ? await em.find(PracticeHead, { student: place.person.id, cohort: cohort.id }, { orderBy: { receivedAt: 'desc' }, limit: 1 }) : []
+      const [head] = place.person ? await em.find(PracticeHead, { student: place.person.id, cohort: cohort.id }, { orderBy: { receivedAt: 'desc', number: 'desc' }, limit: 1 }) : []
       return welcome({ first, cohort: cohort.name, startsOn: cohort.startsOn, pattern: cohort.pattern, core: head?.number ?? null, lesson: lesson?.number ?? 1, url: `${app.config.publicUrl}/lessons${lesson ? `/${lesson.slug}` : ''}` })
     }
   }

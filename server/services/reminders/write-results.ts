@@ -26,7 +26,7 @@ export async function writeResults(tx: EntityManager, app: App, place: BenchPlac
   if (!place.person) return false
   const person = await tx.findOneOrFail(User, place.person.id)
   // The core handed out last that was not lost on the way.
-  const [head] = await tx.find(PracticeHead, { student: person.id, cohort: place.cohort.id, state: { $nin: ['scrapped', 'sawn'] } }, { populate: ['student', 'cohort', 'casting', 'rubric'], orderBy: { receivedAt: 'desc' }, limit: 1 }) as FoundHead[]
+  const [head] = await tx.find(PracticeHead, { student: person.id, cohort: place.cohort.id, state: { $nin: ['scrapped', 'sawn'] } }, { populate: ['student', 'cohort', 'casting', 'rubric'], orderBy: { receivedAt: 'desc', number: 'desc' }, limit: 1 }) as FoundHead[]
   if (!head) return false
   // What only staff do to it later (sectioning) is no part of the student's result.
   const criteria = head.rubric.$.rubric.stages.filter(stage => (stage.staffClearances ?? []).length === 0).flatMap(stage => stage.criteria)
