@@ -42,6 +42,9 @@ const mustHave: Readonly<Record<string, readonly string[]>> = {
   'a role removed while events stream': ['role-removed-while-streaming'],
   'a review of one\'s own work': ['review-own-work'],
   'a stale review': ['review-stale'],
+  'a list of people with duplicates and formula cells': ['roster-rows'],
+  'two admins moving the last place': ['place-move-last'],
+  'eight invented addresses trying to hold every place': ['place-ask-invented'],
 }
 
 it('has every case once', () => {
