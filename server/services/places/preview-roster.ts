@@ -20,7 +20,7 @@ export async function previewRoster(em: EntityManager, code: string, csv: string
   if (!cohort) throw new Refusal('cohort_not_found')
   const rows = readRoster(csv)
   const places = await em.find(BenchPlace, { cohort: cohort.id, state: { $in: [...liveStates, 'finished'] } }, { populate: ['person'] })
-  const there = new Set(places.flatMap(place => [place.email.toLowerCase(), place.person?.$.email.toLowerCase() ?? '']))
+  const there = new Set(places.flatMap(place => [place.email.toLowerCase(), place.person?.$.email.toLowerCase() ?? '']).filter(email => email !== ''))
   const free = cohort.places - places.filter(place => takesBench(place.state)).length
   for (const row of rows) if (there.has(row.email)) row.problems.push('This person is in the cohort or on its list already.')
   // Only rows that can be taken use up places, in the order of the list.

@@ -73,7 +73,7 @@ it('names what is wrong with each row, duplicates and formula cells among it, an
   expect(said(5)).toContain('formula')
   expect(said(5)).toContain('not an e-mail address')
   expect(said(8)).toContain('name is missing')
-  expect(said(9)).toContain('e-mail is missing')
+  expect(said(9)).toBe('The e-mail is missing.')
   expect(said(11)).toContain('already')
   expect(said(12)).toContain('more cells')
   expect({ good: body.good, bad: body.bad }).toEqual({ good: 1, bad: 11 })
