@@ -1,6 +1,7 @@
 import AxeBuilder from '@axe-core/playwright'
 import type { Page } from '@playwright/test'
-import type { BenchView, FeedbackView, HeadSummary, Page as PageOf, QueueItem, SubmissionView } from '#shared/contract/views'
+import type { PlaceRow } from '#shared/contract/places'
+import type { BenchView, FeedbackView, HeadSummary, Page as PageOf, PersonView, QueueItem, SubmissionView } from '#shared/contract/views'
 import { read } from './calls'
 import { expect, ready, signIn, test } from './walk'
 
@@ -37,7 +38,7 @@ async function look(page: Page, paths: readonly string[]): Promise<void> {
 test.describe.configure({ timeout: 120_000 })
 
 test('strangers\' pages serve everybody', async ({ page }) => {
-  await look(page, ['/login', '/forgot', '/set-password?token=aaaaaaaaaaaaaaaaaaaaaaaa'])
+  await look(page, ['/login', '/forgot', '/set-password?token=aaaaaaaaaaaaaaaaaaaaaaaa', '/courses', '/cohorts/CIN-26'])
 })
 
 test('a student\'s pages serve everybody', async ({ page }) => {
@@ -52,7 +53,7 @@ test('a student\'s pages serve everybody', async ({ page }) => {
   expect([withSheet, draft, feedback.items[0]].every(Boolean), 'the story has a sheet, a draft and feedback').toBe(true)
   await look(page, [
     '/bench', '/route-card', `/heads/${bench.head?.id}`, `/proof/${draft?.id}`, `/proof/${draft?.id}/read`, `/proof/${withSheet?.id}`, `/proof/${withSheet?.id}/sheets/${withSheet?.sheets[0]?.id}`,
-    '/feedback', `/feedback/${feedback.items[0]?.submissionId}`, '/lessons', `/lessons/${stages.flatMap(stage => stage.lessons)[0]?.slug}`, '/account', '/forbidden',
+    '/feedback', `/feedback/${feedback.items[0]?.submissionId}`, '/lessons', '/lessons/bowl', '/safety-form', '/account', '/forbidden',
   ])
 })
 
@@ -61,14 +62,22 @@ test('an instructor\'s pages serve everybody', async ({ page }) => {
   const queue = await read<PageOf<QueueItem>>(page, '/api/review-queue')
   const heads = await read<PageOf<HeadSummary>>(page, '/api/heads')
   expect(queue.items.length, 'somebody waits').toBeGreaterThan(0)
-  await look(page, ['/review', ...queue.items.slice(0, 2).map(item => `/review/${item.id}`), '/shop-board', `/heads/${heads.items[0]?.id}`, '/rubrics', '/lessons'])
+  await look(page, ['/review', ...queue.items.slice(0, 2).map(item => `/review/${item.id}`), '/shop-board', `/heads/${heads.items[0]?.id}`, '/rubrics', '/lessons', '/lessons/dummy-valves/edit', '/media', '/records'])
+})
+
+test('an alumna\'s pages serve everybody', async ({ page }) => {
+  await signIn(page, 'freya')
+  await look(page, ['/shelf', '/my-record', '/lessons/dummy-valves'])
 })
 
 test('the office\'s and the safety officer\'s pages serve everybody', async ({ page }) => {
   await signIn(page, 'corin')
-  await look(page, ['/people', '/account'])
+  const [person] = (await read<PageOf<PersonView>>(page, '/api/people?search=imre')).items
+  const [place] = (await read<PageOf<PlaceRow>>(page, '/api/places?search=agnes')).items
+  expect([person, place].every(Boolean), 'the story has Imre and Agnes').toBe(true)
+  await look(page, ['/places', `/places/${place?.id}`, '/places/cohorts', '/places/cohorts/ALD-26/list', '/money-book', '/people', `/people/${person?.id}`, '/records', '/records/mail', '/account'])
   await signIn(page, 'ingrid')
-  await look(page, ['/shop-board'])
+  await look(page, ['/clearances', '/shop-board', '/records'])
 })
 
 test.describe('an address with nothing behind it', () => {
