@@ -140,3 +140,15 @@ it('measures a head of one\'s own along the whole route: no points, no clearance
   expect(head.at(140)).toMatchObject({ state: 'open', points: [], due: { part: 'rest', point: null } })
   expect(head.at(70).state).toBe('done')
 })
+
+it('is shut without the safety form wherever a tool is needed, whoever is cleared, and nowhere else', () => {
+  // Handbook 5.6 and 7: without the form one may watch and not cut; re-asked when a safety clause changes.
+  const never = route(70, { consent: 'none' })
+  expect(never.at(70)).toMatchObject({ state: 'shut', shutBy: 'consent_missing', why: 'Sign the safety form first.' })
+  const again = route(70, { consent: 'asked again' })
+  expect(again.at(70)).toMatchObject({ state: 'shut', shutBy: 'consent_missing', why: 'The safety form changed since you signed it. Sign it again first.' })
+  expect(route(40, { consent: 'none' }).at(40).state).toBe('open')
+  expect(route(70, { consent: 'none', clearances: [] }).at(70).shutBy).toBe('consent_missing')
+  // A head of one's own is cut in a shop of one's own.
+  expect(route(0, { consent: 'none', personal: true }).at(70).state).toBe('open')
+})
