@@ -14,34 +14,33 @@ export function useLessonProgress(slug: string, lesson: Ref<LessonView | null | 
   const api = useApi()
   const call = $fetch as unknown as (path: string, options: Record<string, unknown>) => Promise<unknown>
   const here = ref<string | null>(null)
-  const finished = ref(false)
+  /** As set on this page; before that, as the lesson came. */
+  const finishedNow = ref<boolean | null>(null)
+  const finished = computed(() => finishedNow.value ?? lesson.value?.progress?.finished ?? false)
   const finishing = ref(false)
   const failure = ref<Failure | null>(null)
-  const resumeAt = ref<string | null>(null)
-  let told: string | null = null
+  /** What the server was told last from here; before that, as the lesson came. */
+  let toldNow: string | null = null
+  const told = () => toldNow ?? lesson.value?.progress?.anchor ?? null
   let moved = false
   let timer: ReturnType<typeof setTimeout> | undefined
   let observer: IntersectionObserver | undefined
   const above = new Map<string, boolean>()
 
-  const resume = computed(() => lesson.value?.headings.find(one => one.id === resumeAt.value) ?? null)
+  /** Where one stopped before this visit; the first heading is the beginning, and nothing to go back to. */
+  const resume = computed(() => {
+    const { progress, headings } = lesson.value ?? { progress: null, headings: [] }
+    return progress && !progress.finished ? headings.slice(1).find(one => one.id === progress.anchor) ?? null : null
+  })
   const hereHeading = computed(() => lesson.value?.headings.find(one => one.id === here.value) ?? null)
-
-  watch(lesson, (now, before) => {
-    if (!now || before?.slug === now.slug) return
-    finished.value = now.progress?.finished ?? false
-    told = now.progress?.anchor ?? null
-    // The first heading is the beginning: nothing to go back to.
-    resumeAt.value = !finished.value && told !== now.headings[0]?.id ? told : null
-  }, { immediate: true })
 
   async function tell() {
     clearTimeout(timer)
-    if (!moved || here.value === told || !here.value) return
+    if (!moved || here.value === told() || !here.value) return
     const anchor = here.value
     // Sent so that it arrives although the page is being left. Without a network it is told when the next heading is.
     await call(`/api/lessons/${slug}/progress`, { method: 'POST', body: { anchor, finished: finished.value }, keepalive: true, retry: false }).then(() => {
-      told = anchor
+      toldNow = anchor
     }, () => undefined)
   }
 
@@ -70,10 +69,10 @@ export function useLessonProgress(slug: string, lesson: Ref<LessonView | null | 
 
   async function markRead(done: boolean) {
     finishing.value = true
-    const answer = await api.post(`/api/lessons/${slug}/progress`, { anchor: here.value ?? told, finished: done })
+    const answer = await api.post(`/api/lessons/${slug}/progress`, { anchor: here.value ?? told(), finished: done })
     finishing.value = false
     failure.value = answer.ok ? null : answer.failure
-    if (answer.ok) finished.value = done
+    if (answer.ok) finishedNow.value = done
   }
 
   const onScroll = () => {

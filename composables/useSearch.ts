@@ -1,4 +1,4 @@
-import { computed, onBeforeUnmount, ref, shallowRef, watch } from 'vue'
+import { computed, onBeforeUnmount, onMounted, ref, shallowRef, watch } from 'vue'
 import type { Failure } from '#shared/contract/failure'
 import type { SearchAnswer, SearchHit } from '#shared/contract/lessons'
 import { useApi } from './useApi'
@@ -49,7 +49,7 @@ export function useSearch() {
     clearTimeout(timer)
     timer = setTimeout(() => void search(), pauseMs)
   })
-  if (import.meta.client && q.value) void search()
+  onMounted(() => q.value && void search())
   onBeforeUnmount(() => clearTimeout(timer))
   const searching = computed(() => q.value.trim().length >= 2)
   return { q, hits, foundFor, spelling, busy, failure, searching, search }
