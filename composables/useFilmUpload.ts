@@ -1,4 +1,4 @@
-import { onScopeDispose, shallowRef, type ShallowRef } from 'vue'
+import { getCurrentInstance, onMounted, onScopeDispose, shallowRef, type ShallowRef } from 'vue'
 import { toFailure } from '#shared/contract/failure'
 import type { MediaSending, MediaView } from '#shared/contract/media'
 import { forgetBegun, isOf, keepBegun, readBegun, type BegunUpload } from './film/begun-uploads'
@@ -27,7 +27,8 @@ export function useFilmUpload() {
     sending.value = { ...sending.value, ...change }
   }
   const list = () => readBegun().map(one => one.name)
-  if (import.meta.client) say({ unfinished: list() })
+  // Not before: the server cannot know what this device remembers, and both must draw the same first.
+  if (getCurrentInstance()) onMounted(() => say({ unfinished: list() }))
   onScopeDispose(() => stop.abort())
 
   async function announce(given: File): Promise<{ begun: BegunUpload, announced: Announced }> {
