@@ -1,4 +1,4 @@
-import { ref } from 'vue'
+import { computed, ref } from 'vue'
 import type { Failure } from '#shared/contract/failure'
 import type { LedgerRow, MoneyBookView, OpenMoneyView } from '#shared/contract/money'
 import type { CohortRow } from '#shared/contract/places'
@@ -9,10 +9,12 @@ import { useTable } from './useTable'
 /** The money book: the ledger as asked for with its sums, what is open, and what can be done about a refund that did not go. */
 export function useMoneyBook() {
   const api = useApi()
-  const ledger = useTable<LedgerRow, 'cohort' | 'kind' | 'from' | 'until', MoneyBookView>('/api/ledger', {
+  const ledger = useTable<LedgerRow, 'cohort' | 'kind' | 'from' | 'until'>('/api/ledger', {
     sorts: [{ value: 'newest', label: 'Newest first' }, { value: 'oldest', label: 'Oldest first' }, { value: 'amount', label: 'Largest first' }],
     filters: { cohort: '', kind: '', from: '', until: '' },
   })
+  /** Come with every page, of all lines that were found. */
+  const sums = computed(() => (ledger.first.value as MoneyBookView | null | undefined)?.sums ?? null)
   const { data: open, failure: openFailure, loading: openLoading, refresh: refreshOpen } = useRead<OpenMoneyView>('/api/money/open')
   const { data: cohorts } = useRead<{ items: CohortRow[] }>('/api/cohorts')
 
@@ -37,5 +39,5 @@ export function useMoneyBook() {
     key = null
   }
 
-  return { ledger, open, openFailure, openLoading, refreshOpen, cohorts, busy, refused, act, startAgain }
+  return { ledger, sums, open, openFailure, openLoading, refreshOpen, cohorts, busy, refused, act, startAgain }
 }

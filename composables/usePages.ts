@@ -4,10 +4,10 @@ import { useApi } from './useApi'
 import { useRead } from './useRead'
 
 /** A list that comes a page at a time: the first for the first paint, `more` for the next. `first` is that page with what else it says. */
-export function usePages<Item, First extends Page<Item> = Page<Item>>(path: string | (() => string)) {
+export function usePages<Item>(path: string | (() => string)) {
   const pathNow = typeof path === 'string' ? () => path : path
   const api = useApi()
-  const { data, failure, loading, refresh } = useRead<First>(path)
+  const { data, failure, loading, refresh } = useRead<Page<Item>>(path)
   const later = shallowRef<Item[]>([])
   const next = ref<string | null>(null)
   const busy = ref(false)

@@ -1,6 +1,5 @@
 import { refDebounced } from '@vueuse/core'
 import { computed, ref, watch } from 'vue'
-import type { Page } from '#shared/contract/views'
 import { usePages } from './usePages'
 
 /**
@@ -11,7 +10,7 @@ import { usePages } from './usePages'
  * @param sorts what the list can be ordered by, the usual one first
  * @param filters names of further query values, each with what it is when nobody chose
  */
-export function useTable<Row, Filter extends string = never, First extends Page<Row> = Page<Row>>(path: string, { sorts, filters = {} as Record<Filter, string> }: { sorts: readonly { value: string, label: string }[], filters?: Record<Filter, string> }) {
+export function useTable<Row, Filter extends string = never>(path: string, { sorts, filters = {} as Record<Filter, string> }: { sorts: readonly { value: string, label: string }[], filters?: Record<Filter, string> }) {
   const route = useRoute()
   const router = useRouter()
   const given = (name: string, usual: string) => typeof route.query[name] === 'string' ? route.query[name] : usual
@@ -33,6 +32,6 @@ export function useTable<Row, Filter extends string = never, First extends Page<
     return values.toString()
   })
   watch(query, text => void router.replace({ query: Object.fromEntries(new URLSearchParams(text)) }))
-  const pages = usePages<Row, First>(() => [path, query.value].filter(Boolean).join(path.includes('?') ? '&' : '?'))
+  const pages = usePages<Row>(() => [path, query.value].filter(Boolean).join(path.includes('?') ? '&' : '?'))
   return { ...pages, search, sort, sorts, filters: chosen, query }
 }
