@@ -7,7 +7,7 @@ import type { BenchView, HeadSummary, HeadView, Page, SpotView } from '#shared/c
 import { openHarness, type Harness } from '../harness'
 import { serveApi, type Api, type Caller } from '../http'
 import { makeSchool, type TestSchool } from '../review/school'
-import { clearFor, decide, read, release, walkTo } from '../walk'
+import { clearFor, decide, read, release, sign, walkTo } from '../walk'
 
 let harness: Harness, api: Api, school: TestSchool, imre: Caller, hanne: Caller
 beforeAll(async () => {
@@ -115,12 +115,15 @@ it('offers the next stroke with its caution, and begins nothing behind a hold', 
   expect(await bench(as)).toMatchObject({ next: { offersStroke: true, why: 'Sent back: add only what was asked for.' }, waiting: [{ title: 'Hold 4', state: 'sent back' }], fromInstructor: { by: 'Hanne Brockwell', text: 'Take it again at 12.', submissionId: id } })
 })
 
-it('offers no stroke to somebody whose clearance is missing', async () => {
+it('offers no stroke to somebody who has not signed the safety form, or whose clearance is missing', async () => {
   const person = await school.person('Uncleared Somebody', ['student'])
   const head = await school.anotherHead('DNK-0998', person)
   await walkTo(school, 70, head)
-  const shown = await bench(await api.as(person))
-  expect(shown).toMatchObject({ next: { op: 70, offersStroke: false, why: expect.stringContaining('not cleared for the die grinder') }, metalLeft: [], wanted: [] })
+  const caller = await api.as(person)
+  expect(await bench(caller)).toMatchObject({ consent: 'none', next: { op: 70, offersStroke: false, why: 'Sign the safety form first.' }, metalLeft: [], wanted: [] })
+  await sign(school, person)
+  const shown = await bench(caller)
+  expect(shown).toMatchObject({ consent: 'signed', next: { op: 70, offersStroke: false, why: expect.stringContaining('not cleared for the die grinder') }, metalLeft: [], wanted: [] })
 })
 
 it('says how much metal is left from the map of the baseline on, and never without where to stop', async () => {

@@ -5,6 +5,7 @@ import { alumniEnding } from '#server/services/mail/templates/alumni-ending'
 import { balanceDue } from '#server/services/mail/templates/balance-due'
 import { balanceLate } from '#server/services/mail/templates/balance-late'
 import { depositReceived } from '#server/services/mail/templates/deposit-received'
+import { lessonChanged } from '#server/services/mail/templates/lesson-changed'
 import { placeHeld } from '#server/services/mail/templates/place-held'
 import { refundWentLetter } from '#server/services/mail/templates/refund'
 import { results } from '#server/services/mail/templates/results'
@@ -29,6 +30,7 @@ const letters: [number, Letter, string, string[]][] = [
   [15, refundWentLetter({ first, cohort: 'Bramble', amount: '£325.00', cancelled: { on: '13 August 2025', daysBefore: 40 }, why: 'rule', rule: 'deposit back less £25.00', sum: '£350.00 - £25.00 = £325.00', by: 'card', url }), 'Your refund of £325.00', ['40 days before', 'Rule: deposit back less £25.00.', 'If you think the rule is wrong, reply; a person looks.']],
   [16, results({ first, head: 'DNK-0147', word: 'Sound', score: 91, gain: '16.8 ± 0.9 %', best: ['Bowl wall', 'Seat land', 'Throat'], workOn: { title: 'Finish', text: 'Chatter at the short turn.' }, url }), 'Your result: Sound', ['DNK-0147: Sound, 91 of 100. Lift-weighted intake 16.8 ± 0.9 %.', 'Three things you do well:', 'One to work on: Finish. Chatter at the short turn.', 'You keep the record for good.']],
   [17, alumniEnding({ first, until: '2028-12-18', price: money(4000), url }), 'Your access ends 18 December 2028', ['the lessons close on 18 December 2028; your own record never does. £40.00 keeps them open a year.']],
+  [18, lessonChanged({ number: 5, title: 'Dummy valves', whatChanged: 'the margin is ground off first', why: 'two seats were bared', by: 'Hanne Brockwell', url }), 'Lesson 5 has changed', ['What: the margin is ground off first.', 'Why: two seats were bared.', 'your instructor will say']],
 ]
 
 it.each(letters)('message %i has the handbook\'s subject and words, one action, and no brace or undefined left', async (_number, letter, subject, words) => {
