@@ -70,12 +70,13 @@ function readArguments(args: string[]): { deposits: number, kills: number, sweep
 /** Waits until every payment is in the ledger with its receipt made, and no work on money is left. */
 async function settled({ app }: OwnStack, deposits: number): Promise<void> {
   const end = performance.now() + settlesWithinMs
-  for (;;) {
+  for (let told = 0; ; told += 1) {
     const em = app.orm.em.fork()
     const lines = await em.count(LedgerLine, { kind: 'card' })
     const papers = await em.count(Receipt, { key: { $ne: null } })
-    const [work] = await em.getConnection().execute<{ n: number }[]>('select count(*)::int as n from pgboss.job where name in (\'apply-payment\', \'send-refund\', \'make-receipt\', \'sweep-payments\') and state in (\'created\', \'retry\', \'active\')')
+    const [work] = await em.getConnection().execute<{ n: number }[]>('select count(*)::int as n from pgboss.job where name in (\'apply-payment\', \'send-refund\', \'make-receipt\') and state in (\'created\', \'retry\', \'active\')')
     if (lines >= deposits && papers >= deposits && work?.n === 0) return
+    if (told % 30 === 29) say(`  still waiting: ${lines} lines, ${papers} receipts made, ${work?.n} jobs left`)
     if (performance.now() > end) {
       say(`Not settled within ${settlesWithinMs / 60_000} minutes: ${lines} lines, ${papers} receipts made, ${work?.n} jobs left.`)
       return

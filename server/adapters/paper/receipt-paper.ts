@@ -19,7 +19,6 @@ export interface ReceiptPaper {
   issuedAt: Date
 }
 
-const require = createRequire(import.meta.url)
 const ink = '#1b2023'
 const quiet = '#58616a'
 const layoutBlue = '#14285e'
@@ -37,6 +36,8 @@ const plain = (text: string): string => text.replaceAll('&', 'and').replace(/[<>
  * The same paper gives the same bytes: nothing in it comes from the clock or from chance. Rows of a table must fit one page; ours do.
  */
 export function drawReceipt(paper: ReceiptPaper): Promise<Uint8Array> {
+  // Not at the top: in the build this module's address is known only once the process has started.
+  const require = createRequire(import.meta.url)
   const title = `Receipt ${paper.number}, ${paper.school.name}`
   const regular = require.resolve('dejavu-fonts-ttf/ttf/DejaVuSans.ttf')
   const bold = require.resolve('dejavu-fonts-ttf/ttf/DejaVuSans-Bold.ttf')
