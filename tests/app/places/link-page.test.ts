@@ -1,5 +1,5 @@
 import { mountSuspended, registerEndpoint } from '@nuxt/test-utils/runtime'
-import { flushPromises } from '@vue/test-utils'
+import { flushPromises, type VueWrapper } from '@vue/test-utils'
 import { setResponseStatus, type H3Event } from 'h3'
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest'
 import type { PlaceLinkView } from '#shared/contract/places'
@@ -8,7 +8,7 @@ import { linkView } from './samples'
 
 // Each test has a link of its own: what was read for one must not answer for another.
 let count = 0
-let wrapper: Awaited<ReturnType<typeof mountSuspended>> | null = null
+let wrapper: VueWrapper | null = null
 const calls: string[] = []
 
 function problem(event: H3Event, status: number, code: string, title: string) {
