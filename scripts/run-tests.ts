@@ -30,6 +30,7 @@ const steps: Step[] = [
   vitest('domain'), vitest('meta'), vitest('server'), vitest('app'),
 ]
 const killing: Step = { name: 'kill', script: 'node_modules/tsx/dist/cli.mjs', args: ['--tsconfig', 'scripts/tsconfig.json', 'scripts/kill.ts', '3'], env: origin }
+const depositing: Step = { name: 'deposits', script: 'node_modules/tsx/dist/cli.mjs', args: ['--tsconfig', 'scripts/tsconfig.json', 'scripts/deposits.ts', '12', '--kills', '2', '--sweep-now'], env: origin }
 const endToEnd: Step = {
   name: 'e2e', script: 'node_modules/@playwright/test/cli.js', args: ['test', '--reporter=line,json'],
   env: { ...origin, PLAYWRIGHT_JSON_OUTPUT_NAME: 'test-results/e2e.json' }, report: { kind: 'playwright', file: 'test-results/e2e.json' },
@@ -38,22 +39,23 @@ const endToEnd: Step = {
 await runCommand(async () => {
   const began = performance.now()
   const only = process.argv.slice(2).filter(arg => !arg.startsWith('-'))
-  const unknown = only.filter(name => ![...steps, killing, endToEnd].some(step => step.name === name) && name !== 'build')
-  if (unknown.length > 0) throw new Problem(`There is no step called ${unknown.join(', ')}. They are: ${[...steps.map(step => step.name), 'build', 'kill', 'e2e'].join(', ')}.`)
+  const unknown = only.filter(name => ![...steps, killing, depositing, endToEnd].some(step => step.name === name) && name !== 'build')
+  if (unknown.length > 0) throw new Problem(`There is no step called ${unknown.join(', ')}. They are: ${[...steps.map(step => step.name), 'build', 'kill', 'deposits', 'e2e'].join(', ')}.`)
   const wanted = (name: string) => only.length === 0 || only.includes(name)
 
   const settings = readSettings(process.env)
   const secrets = readOrMakeSecrets(settings.dataDir)
   const results: StepResult[] = []
-  if (wanted('server') || wanted('kill') || wanted('e2e')) await startCluster(testCluster(settings.dataDir, settings.testDatabasePort, secrets), say)
+  if (wanted('server') || wanted('kill') || wanted('deposits') || wanted('e2e')) await startCluster(testCluster(settings.dataDir, settings.testDatabasePort, secrets), say)
   if (wanted('e2e') && !existsSync(process.env.CHROMIUM ?? '/usr/bin/chromium')) await installFromDebian('chromium', 'Chromium', say)
 
   for (const step of steps) if (wanted(step.name)) results.push(await runStep(step))
   const hasWalks = readdirSync(join(projectRoot, 'tests/e2e'), { recursive: true }).some(name => String(name).endsWith('.spec.ts'))
-  if (wanted('build') || wanted('kill') || wanted('e2e')) {
+  if (wanted('build') || wanted('kill') || wanted('deposits') || wanted('e2e')) {
     const built = await timed('build', () => ensureBuild(settings.dataDir, say))
     results.push(built)
     if (built.ok && wanted('kill')) results.push(await runStep(killing))
+    if (built.ok && wanted('deposits')) results.push(await runStep(depositing))
     // Walks over an old build would say nothing about these sources.
     if (built.ok && wanted('e2e') && hasWalks) results.push(await runStep(endToEnd))
   }
