@@ -67,6 +67,12 @@ export default defineNuxtConfig({
       exclude: ['../tests/**', '../scripts/**', '../docker/**', '../server/**'],
     },
   },
+  hooks: {
+    // Nor is a page loaded ahead because rollup put it into a chunk with something it shares: Nuxt knows pages by their file alone, and would name such a chunk on every page.
+    'build:manifest': (manifest) => {
+      for (const chunk of Object.values(manifest)) if (chunk.isEntry) chunk.dynamicImports = []
+    },
+  },
   telemetry: false,
   auth: {
     originEnvKey: 'AUTH_ORIGIN',
