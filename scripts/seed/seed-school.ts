@@ -10,6 +10,7 @@ import { hashPassword } from '#server/utils/passwords'
 import { seedClips } from './seed-clips'
 import { paperHeads } from './paper-heads'
 import { playPaper } from './play-paper'
+import { seedPassages } from './seed-passages'
 import { storyPictures } from './pictures'
 import { loadActors, play } from './play'
 import { story } from './story'
@@ -32,6 +33,7 @@ export async function seedSchool(given: { orm: MikroORM, config: Config, storage
   // Before the lessons, which show them.
   await seedClips(orm.em.fork(), storage, new Date('2025-09-01T00:00:00Z'))
   await new DemoSeeder().run(em, { until, passwordHash: await hashPassword(password), seededAt: new Date() })
+  await seedPassages(orm.em.fork())
   const opened = await openStoryApp(config, { orm, storage })
   const player = { story: opened, pictures: storyPictures(opened.app), actors: await loadActors(orm.em.fork()) }
   await playPaper(player, paperHeads, until)

@@ -1,4 +1,5 @@
 import type { LessonDocument, LessonNode } from '../contract/lesson-document'
+import { headingAddress } from './heading-address'
 import { textOf } from './text-of'
 
 /**
@@ -28,16 +29,11 @@ export function withHeadingIds(document: LessonDocument): LessonDocument {
       taken.add(id)
     }
   }
-  for (const heading of headings) if (!kept.has(heading)) kept.set(heading, fresh(addressOf(textOf(heading))))
+  for (const heading of headings) if (!kept.has(heading)) kept.set(heading, fresh(headingAddress(textOf(heading))))
   const write = (node: LessonNode): LessonNode => ({
     ...node,
     ...(kept.has(node) ? { attrs: { ...node.attrs, id: kept.get(node) } } : {}),
     ...(node.content ? { content: node.content.map(write) } : {}),
   })
   return write(document) as LessonDocument
-}
-
-function addressOf(words: string): string {
-  const id = words.normalize('NFKD').replaceAll(/\p{M}/gu, '').toLowerCase().replaceAll(/[’']/g, '').replaceAll(/[^a-z0-9]+/g, '-').replaceAll(/^-|-$/g, '')
-  return id.slice(0, 80).replace(/-$/, '') || 'part'
 }

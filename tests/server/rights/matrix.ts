@@ -42,6 +42,10 @@ const students: MatrixRow['who'] = { ...noRole, 'student': 'yes', 'other student
 const instructors: MatrixRow['who'] = { ...noRole, 'instructor': 'yes', 'other instructor': 'yes' }
 const taught: MatrixRow['who'] = { ...noRole, 'instructor': 'yes', 'other instructor': 404 }
 
+/** A note is of whoever wrote it; nobody else's, staff's neither. */
+const ownNote: MatrixRow['who'] = { 'nobody': 401, 'student': 'yes', 'other student': 404, 'alumni': 'yes', 'instructor': 404, 'other instructor': 404, 'admin': 404, 'safety': 404 }
+const lessonDocument = { type: 'doc', content: [{ type: 'paragraph', content: [{ type: 'text', text: 'Scribe one line.' }] }] }
+
 export const matrix: readonly MatrixRow[] = [
   // open to all
   row('GET /api/health', everybody, at('/api/health')),
@@ -179,6 +183,21 @@ export const matrix: readonly MatrixRow[] = [
   // what the school works by
   row('GET /api/lessons', signedIn, at('/api/lessons')),
   row('GET /api/lessons/{slug}', signedIn, async world => ({ path: `/api/lessons/${await world.lesson()}` })),
+  row('POST /api/lessons', instructors, at('/api/lessons', { title: 'Valve lapping', module: 1 })),
+  row('GET /api/lessons/{slug}/versions', signedIn, async world => ({ path: `/api/lessons/${await world.lesson()}/versions` })),
+  row('GET /api/lessons/{slug}/draft', instructors, async world => ({ path: `/api/lessons/${await world.lesson()}/draft` })),
+  row('POST /api/lessons/{slug}/draft', instructors, async world => ({ path: `/api/lessons/${await world.lesson()}/draft`, body: { seen: 0, title: 'Scribing', document: lessonDocument } })),
+  row('POST /api/lessons/{slug}/preview', instructors, async world => ({ path: `/api/lessons/${await world.lesson()}/preview`, body: { title: 'Scribing', document: lessonDocument } })),
+  // Nothing is written in a lesson nobody touched, which is a yes to the person.
+  row('POST /api/lessons/{slug}/publish', instructors, async world => ({ path: `/api/lessons/${await world.lesson()}/publish`, body: { seen: 1, whatChanged: 'A word.', why: 'It was wrong.' } })),
+  row('POST /api/lessons/{slug}/progress', signedIn, async world => ({ path: `/api/lessons/${await world.lesson()}/progress`, body: { anchor: null } })),
+  row('GET /api/lessons/{slug}/notes', signedIn, async world => ({ path: `/api/lessons/${await world.lesson()}/notes` })),
+  row('POST /api/lessons/{slug}/notes', signedIn, async world => ({ path: `/api/lessons/${await world.lesson()}/notes`, body: { anchor: null, text: 'Ask about this.' } })),
+  row('GET /api/notes', signedIn, at('/api/notes')),
+  row('POST /api/notes/{id}', ownNote, async (world, owner) => ({ path: `/api/notes/${await world.note(owner)}`, body: { anchor: null, text: 'Asked.' } })),
+  row('DELETE /api/notes/{id}', ownNote, async (world, owner) => ({ path: `/api/notes/${await world.note(owner)}` })),
+  row('GET /api/search', signedIn, at('/api/search?q=scribe')),
+  row('GET /api/shelf', students, at('/api/shelf')),
   // pictures and films for lessons: read while one may read lessons, written by instructors
   row('GET /api/media', instructors, at('/api/media')),
   row('POST /api/media', { ...noRole, 'instructor': 'yes', 'other instructor': 'yes' }, async (world, _owner, caller) => ({ path: '/api/media', body: { uploadId: await world.upload(caller, 'lesson-media'), title: 'Scribing' } })),

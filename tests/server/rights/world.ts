@@ -8,6 +8,7 @@ import { Photo } from '#server/db/entities/Photo'
 import { Upload, type UploadPurpose } from '#server/db/entities/Upload'
 import { User } from '#server/db/entities/User'
 import { addDocument } from '#server/services/documents/add-document'
+import { addNote } from '#server/services/lessons/add-note'
 import { addFlowSheet } from '#server/services/flow-sheets/add-flow-sheet'
 import type { Actor } from '#server/utils/actor'
 import type { SubmissionPart } from '#shared/domain/rubric/evidence'
@@ -41,6 +42,8 @@ export interface World {
   stop: (owner: Actor, by: Actor) => Promise<string>
   /** Slug of a published lesson. */
   lesson: () => Promise<string>
+  /** A note of this person in a lesson. */
+  note: (owner: Actor) => Promise<string>
   /** A clearance for the saw, which no stage of a student asks for. */
   clearance: (owner: Actor) => Promise<string>
   /** A message that was sent. */
@@ -92,14 +95,18 @@ export async function makeWorld(harness: Harness, school: TestSchool): Promise<W
       return made.id
     })
   }
+  async function lesson(): Promise<string> {
+    count += 1
+    const slug = `lesson-${count}`
+    await curriculum.lesson(count, slug, 'Scribing', [words('Scribe one line.')])
+    return slug
+  }
 
   return {
     harness, school, bettany, freya, stranger, upload,
-    async lesson() {
-      count += 1
-      const slug = `lesson-${count}`
-      await curriculum.lesson(count, slug, 'Scribing', [words('Scribe one line.')])
-      return slug
+    lesson,
+    async note(owner) {
+      return (await addNote(school.em(), harness.app, owner, await lesson(), { anchor: null, text: 'Ask about this.' })).id
     },
     head: owner => head(owner),
     draft: owner => draft(owner),
