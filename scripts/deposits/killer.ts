@@ -5,6 +5,9 @@ import type { KeptProcess } from './kept-process'
 export class Killer {
   private done = 0
   private killed = 0
+  /** Whom the next ones hit: each equally often, in an order of chance. */
+  private targets: KeptProcess[] = []
+
   constructor(private readonly processes: readonly KeptProcess[], private readonly kills: number, private readonly deposits: number) {}
 
   async oneMoreDone() {
@@ -22,6 +25,7 @@ export class Killer {
   private async one() {
     this.killed += 1
     await wait(Math.random() * 400)
-    this.processes[Math.floor(Math.random() * this.processes.length)]?.kill()
+    if (this.targets.length === 0) this.targets = [...this.processes]
+    this.targets.splice(Math.floor(Math.random() * this.targets.length), 1)[0]?.kill()
   }
 }
