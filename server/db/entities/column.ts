@@ -15,7 +15,7 @@ class WriteOnceJson extends JsonType {
     return false
   }
 
-  compareValues() {
+  override compareValues() {
     return true
   }
 }
