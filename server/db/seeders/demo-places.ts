@@ -16,10 +16,8 @@ const minor = (pounds: number): number => Math.round(pounds * 100)
 /** Every cohort with what it costs; those still to come take asks. */
 export function makeCohorts(em: EntityManager, { scenario, start }: SchoolContent, until: Date): Map<string, Cohort> {
   const all = [...start.earlierCohorts, ...scenario.cohorts]
-  /** "as Bramble" is how the scenario saves words. */
-  const patternOf = (pattern: string): string => all.find(one => pattern === `as ${one.name}`)?.pattern ?? pattern
   return new Map(all.map(({ code, name, start: startsOn, end: endsOn, pattern, places }) => [code, em.create(Cohort, {
-    code, name, startsOn, endsOn, pattern: patternOf(pattern), places, open: until < morning(startsOn), priceMinor: minor(scenario.prices.course_full), depositMinor: minor(scenario.prices.place_deposit),
+    code, name, startsOn, endsOn, pattern, places, open: until < morning(startsOn), priceMinor: minor(scenario.prices.course_full), depositMinor: minor(scenario.prices.place_deposit),
     currency: scenario.school.currency, createdAt: new Date(morning(startsOn).getTime() - 180 * day),
   })]))
 }
