@@ -1,9 +1,10 @@
 import { computed, onMounted, ref, shallowRef, watch, type Ref } from 'vue'
 import type { Failure } from '#shared/contract/failure'
 import type { LessonView, NoteView } from '#shared/contract/lessons'
-import { openDevice } from '~/stores/outbox/device-database'
 import { useApi } from './useApi'
 import { useMe } from './useMe'
+
+interface Waiting { key: string, anchor: string | null, text: string }
 
 /**
  * One's own notes in a lesson, by heading. A note goes to the server when it is saved; until the server has it, it is on this device
@@ -15,21 +16,20 @@ export function useNotes(slug: string, lesson: Ref<LessonView | null | undefined
   const added = shallowRef<NoteView[]>([])
   const removed = ref<string[]>([])
   const changed = shallowRef<Record<string, NoteView>>({})
-  const waiting = ref<{ key: string, anchor: string | null, text: string }[]>([])
+  const waiting = ref<Waiting[]>([])
   const failure = ref<Failure | null>(null)
   const busy = ref(false)
   const notes = computed(() => [...(lesson.value?.notes ?? []), ...added.value].filter(note => !removed.value.includes(note.id)).map(note => changed.value[note.id] ?? note))
-  const shelf = () => `${me.value?.id ?? 'nobody'}:notes:${slug}`
+  const shelf = () => `witness-mark:${me.value?.id ?? 'nobody'}:notes:${slug}`
 
-  async function keep() {
-    const device = await openDevice()
-    if (waiting.value.length) await device.put('drafts', { key: shelf(), person: me.value?.id ?? 'nobody', value: waiting.value.map(one => ({ ...one })), keptAt: Date.now() })
-    else await device.delete('drafts', shelf())
+  function keep() {
+    if (waiting.value.length) localStorage.setItem(shelf(), JSON.stringify(waiting.value))
+    else localStorage.removeItem(shelf())
   }
 
   async function add(anchor: string | null, text: string) {
     waiting.value = [...waiting.value, { key: crypto.randomUUID(), anchor, text }]
-    await keep()
+    keep()
     return sendWaiting()
   }
 
@@ -47,16 +47,16 @@ export function useNotes(slug: string, lesson: Ref<LessonView | null | undefined
       }
       added.value = [...added.value, answer.value]
       waiting.value = waiting.value.slice(1)
-      await keep()
+      keep()
     }
     busy.value = false
     return waiting.value.length === 0
   }
 
-  async function dropWaiting(key: string) {
+  function dropWaiting(key: string) {
     waiting.value = waiting.value.filter(one => one.key !== key)
     failure.value = null
-    await keep()
+    keep()
   }
 
   async function remove(id: string) {
@@ -73,13 +73,23 @@ export function useNotes(slug: string, lesson: Ref<LessonView | null | undefined
     return answer.ok
   }
 
-  onMounted(() => watch(() => me.value?.id, async (id) => {
-    if (!id) return
-    const kept = await (await openDevice()).get('drafts', shelf())
+  onMounted(() => watch(() => me.value?.id, (id) => {
+    const kept = id ? localStorage.getItem(shelf()) : null
     if (!kept) return
-    waiting.value = kept.value as typeof waiting.value
+    waiting.value = readKept(kept)
     void sendWaiting()
   }, { immediate: true }))
 
   return { notes, waiting, failure, busy, add, change, remove, sendWaiting, dropWaiting }
+}
+
+/** What stands in the browser's storage may have been written by anything; what cannot be read is no note. */
+function readKept(text: string): Waiting[] {
+  try {
+    const kept: unknown = JSON.parse(text)
+    return Array.isArray(kept) ? kept.filter((one): one is Waiting => typeof one?.key === 'string' && typeof one?.text === 'string') : []
+  }
+  catch {
+    return []
+  }
 }

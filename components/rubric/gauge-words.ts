@@ -1,6 +1,7 @@
 import type { CriterionState } from '#shared/domain/rubric/criterion'
 import { stateWords } from '../ui/state-words'
-import { withoutDoubt, writeWithDoubt, writtenUnit } from '../ui/both-units'
+import { withoutDoubt, writeWithDoubt } from '../ui/with-doubt'
+import { writtenUnit } from '../ui/written-unit'
 import type { GaugeInput } from './gauge-layout'
 
 /**

@@ -1,5 +1,7 @@
 import { describe, expect, it } from 'vitest'
-import { inOtherUnit, withoutDoubt, writeWithDoubt, writtenUnit } from '~/components/ui/both-units'
+import { inOtherUnit } from '~/components/ui/both-units'
+import { withoutDoubt, writeWithDoubt } from '~/components/ui/with-doubt'
+import { writtenUnit } from '~/components/ui/written-unit'
 
 describe('both units', () => {
   it('gives a length in the other unit with a thousandth of an inch to a hundredth of a millimetre', () => {
