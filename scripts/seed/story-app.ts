@@ -1,6 +1,7 @@
 import { EventEmitter } from 'node:events'
 import { MikroORM } from '@mikro-orm/postgresql'
 import { sharpImaging } from '#server/adapters/imaging/sharp'
+import { stripePayments } from '#server/adapters/payments/stripe'
 import type { Storage } from '#server/adapters/storage/storage'
 import { dbConfig } from '#server/db/config'
 import type { App } from '#server/utils/app'
@@ -30,6 +31,8 @@ export async function openStoryApp(config: Config, given: { orm?: MikroORM, stor
     boss: boss as unknown as App['boss'],
     storage: given.storage,
     mail: { send: async () => ({ state: 'dead', problem: 'the story sends nothing' }), close: () => undefined },
+    // What was paid in the past is plain rows: nothing is asked of it.
+    payments: stripePayments(config.pay),
     clock: { now: () => now, schoolNow: () => now },
     imaging: sharpImaging(),
     signals: { onSubmission: nothing, onWork: nothing, close: async () => undefined },

@@ -1,5 +1,6 @@
 import { BenchPlace } from '#server/db/entities/BenchPlace'
 import { Payment } from '#server/db/entities/Payment'
+import { PaymentEvent } from '#server/db/entities/PaymentEvent'
 import { SchoolSetting } from '#server/db/entities/SchoolSetting'
 import { takesBench } from '#server/services/places/place-states'
 import type { App } from '#server/utils/app'
@@ -52,7 +53,10 @@ async function readMessages(app: App, now: Date): Promise<void> {
   const em = app.orm.em.fork()
   const setting = await em.findOne(SchoolSetting, { name: seenUntil })
   const since = typeof setting?.value === 'string' ? Date.parse(setting.value) - overlapMs : now.getTime() - firstLookMs
-  for (const message of await app.payments.listEvents(new Date(since))) await keepPaymentMessage(app.orm.em.fork(), app, message)
+  const messages = await app.payments.listEvents(new Date(since))
+  // Nearly all of them came by themselves.
+  const known = new Set((await em.find(PaymentEvent, { id: { $in: messages.map(one => one.id) } })).map(one => one.id))
+  for (const message of messages) if (!known.has(message.id)) await keepPaymentMessage(app.orm.em.fork(), app, message)
   // Only after all of them are kept.
   await em.upsert(SchoolSetting, { name: seenUntil, value: now.toISOString() })
 }
