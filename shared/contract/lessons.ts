@@ -47,7 +47,7 @@ export const deepestDocument = 24
 /** What a document may weigh, bytes; pictures and films are not in it. */
 export const largestDocument = 524_288
 const documentShape = z.object({ type: z.literal('doc') }).passthrough()
-  .refine(value => isWithinDepth(value, deepestDocument * 2), 'is nested too deeply')
+  .refine(value => isWithinDepth(value, deepestDocument * 2 + 4), 'is nested too deeply')
   .transform(value => value as unknown as LessonDocument)
 export const draftSaveInput = z.object({ seen: z.number().int().min(0), title: someText(160), document: documentShape }).strict()
 export type DraftSaveInput = z.infer<typeof draftSaveInput>

@@ -5,6 +5,7 @@ import type { App } from '#server/utils/app'
 import { Refusal } from '#server/utils/refusal'
 import type { SearchAnswer, SearchHit, SearchQuery } from '#shared/contract/lessons'
 import { lessonAccess } from './lesson-access'
+import { oneSlipAway } from './one-slip-away'
 import { asWrittenSql, nearestWordsSql, nearWordsSql, snippetsSql } from './search-sql'
 
 interface Candidate { id: string, lesson_id: string, ordinal: number, kind: 'text' | 'caption', anchor: string, heading: string, clip_id: string | null, from_ms: number | null, rank: number, said: boolean, own: boolean }
@@ -25,7 +26,7 @@ export async function searchLessons(em: EntityManager, app: App, actor: Actor, {
   let near: string | null = null
   if (found.length === 0) {
     const words = wordsOf(q)
-    const nearest = words.length === 0 ? [] : await run<{ asked: string, near: string }>(nearestWordsSql, [JSON.stringify(words)])
+    const nearest = words.length === 0 ? [] : await run<{ asked: string, near: string }>(nearestWordsSql, [JSON.stringify(words.map(word => ({ word, slips: oneSlipAway(word) })))])
     for (const join of words.length > 1 ? [' & ', ' | '] : [' & ']) {
       near = words.map(word => nearQuery(word, nearest.filter(one => one.asked === word).map(one => one.near))).join(join)
       if (near === '') break
