@@ -126,8 +126,9 @@ it('shows script as words, in text, in attributes and in captions', () => {
 })
 
 it('cleans what is rendered a second time: a link that got past the check does not run', () => {
-  const unchecked = documentOf({ type: 'paragraph', content: [{ type: 'text', text: 'here', marks: [{ type: 'link', attrs: { href: 'javascript:alert(1)' } }] }] })
-  expect(lessonHtml(unchecked, { limits: {}, media: {} })).not.toContain('javascript')
+  for (const href of ['javascript:alert(1)', '//elsewhere.example', 'ftp://elsewhere.example']) {
+    expect(lessonHtml(documentOf({ type: 'paragraph', content: [{ type: 'text', text: 'here', marks: [{ type: 'link', attrs: { href } }] }] }), { limits: {}, media: {} })).toBe('<p><a>here</a></p>')
+  }
 })
 
 it('says all a block has to say in words', () => {

@@ -25,7 +25,7 @@ beforeAll(async () => {
   film = await school.em().transactional(async (tx) => {
     const made = tx.create(MediaAsset, { kind: 'video', title: 'Dummy valves', name: 'dummy-valves', upload: null, key: 'k', contentType: 'video/mp4', bytes: 1, width: null, height: null, durationSeconds: 30, state: 'ready', problem: null, addedBy: null, addedAt: new Date() })
     const cues = [
-      { fromMs: 1000, toMs: 3000, text: 'A whole valve is a poor lid.' },
+      { fromMs: 1000, toMs: 3000, text: 'A whole valve is a poor lid, with no lip.' },
       { fromMs: 3200, toMs: 6000, text: 'Look for a lip\nat twelve o\'clock,' },
       { fromMs: 6100, toMs: 9000, text: 'before the cutter turns.' },
       { fromMs: 20_000, toMs: 22_000, text: 'Wipe the seat.' },
@@ -57,6 +57,8 @@ it('opens at the heading the words stand under, and marks them', async () => {
 it('finds what is said in a film, and opens at the second it begins, once', async () => {
   expect(found(await search('lip at twelve o\'clock'))).toEqual([['dummy-valves', 'caption', 'clip-1', 3.2]])
   expect((await search('"poor lid"')).items).toMatchObject([{ kind: 'caption', clip: film, seconds: 1, heading: 'Fit', snippet: expect.stringContaining('a ⟦poor⟧ ⟦lid⟧') }])
+  // Said twice, in two captions one after the other: both.
+  expect((await search('lip')).items.map(hit => hit.seconds).sort()).toEqual([1, 3.2])
   // Across two captions: where it begins.
   expect(found(await search('"twelve o\'clock before the cutter"'))).toEqual([['dummy-valves', 'caption', 'clip-1', 3.2]])
 })
