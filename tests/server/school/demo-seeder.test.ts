@@ -1,13 +1,18 @@
+import { readFileSync } from 'node:fs'
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import { BenchPlace } from '#server/db/entities/BenchPlace'
 import { CohortStaff } from '#server/db/entities/CohortStaff'
 import { Instrument } from '#server/db/entities/Instrument'
+import { LessonVersion } from '#server/db/entities/LessonVersion'
 import { PracticeHead } from '#server/db/entities/PracticeHead'
 import { User } from '#server/db/entities/User'
 import { seedClips } from '../../../scripts/seed/seed-clips'
+import { seedPassages } from '../../../scripts/seed/seed-passages'
 import { DemoSeeder } from '#server/db/seeders/DemoSeeder'
 import { viewLesson } from '#server/services/lessons/view-lesson'
 import { listLessons } from '#server/services/lessons/list-lessons'
+import { publishProblems } from '#server/services/lessons/publish-problems'
+import { searchLessons } from '#server/services/lessons/search-lessons'
 import { wholeRubric } from '#shared/contract/rubric-input'
 import { readingQuantities } from '#shared/contract/quantities'
 import { readContent } from '#server/db/seeders/content'
@@ -78,4 +83,16 @@ it('publishes fourteen lessons, each readable, and one for every stage but flow 
 
 it('starts with a rubric that could be saved as it is', () => {
   expect(wholeRubric.safeParse(readContent().rubric).success).toBe(true)
+})
+
+it('starts with lessons that could be published as they are, and finds what is said in their films at the second', async () => {
+  const hanne = { ...await em().findOneOrFail(User, { email: 'hanne@sallowbeck.example' }), sessionId: '' }
+  for (const { document, title } of await em().find(LessonVersion, {})) expect([title, await publishProblems(em(), document)]).toEqual([title, []])
+  await seedPassages(em())
+  const [hit] = (await searchLessons(em(), harness.app, hanne, { q: 'lip at twelve o\'clock', limit: 5 })).items
+  // Handbook 1.5: "I searched 'lip at twelve o'clock' and it opened the lesson at the line."
+  expect(hit).toMatchObject({ kind: 'caption', lesson: { slug: 'dummy-valves' } })
+  const captions = readFileSync(new URL('../../../content/media/dummy-valves.captions.vtt', import.meta.url), 'utf8')
+  const [, minutes, seconds] = /(\d\d):(\d\d\.\d{3}) --> [^\n]*\n[^\n]*lip at twelve o'clock/i.exec(captions) ?? []
+  expect(hit?.seconds).toBe(Number(minutes) * 60 + Number(seconds))
 })
