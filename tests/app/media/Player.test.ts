@@ -151,7 +151,7 @@ describe('the player', () => {
 describe('what is said', () => {
   it('is one tab stop, and arrows move among the lines', async () => {
     const wrapper = await mountSuspended(Player, { props: { media: media() }, attachTo: document.body })
-    const lines = wrapper.findAll('[aria-label="What is said"] button')
+    const lines = wrapper.findAll<HTMLButtonElement>('[aria-label="What is said"] button')
     expect(lines.map(line => line.attributes('tabindex'))).toEqual(['0', '-1', '-1'])
     lines[0]!.element.focus()
     await lines[0]!.trigger('keydown', { key: 'ArrowDown' })
