@@ -37,9 +37,8 @@ await runCommand(async () => {
   await ensureBuild(readSettings(process.env).dataDir, say)
   const school = await startSchool('bench', null)
   try {
-    const student = await signInAs(school.url, 'Imre')
-    const instructor = await signInAs(school.url, 'Hanne')
-    const pages = await pagesToVisit(student, instructor)
+    const [student, alumna, instructor, office] = [await signInAs(school.url, 'Imre'), await signInAs(school.url, 'Freya'), await signInAs(school.url, 'Hanne'), await signInAs(school.url, 'Corin')]
+    const pages = await pagesToVisit({ student, alumna, instructor, office })
     let baseMs: number | null = null
     if (wanted('pages') || wanted('score')) {
       const timed = await pageTimes(school.url, wanted('pages') ? pages : pages.slice(0, 1))

@@ -73,7 +73,8 @@ await runCommand(async () => {
       ...(standIns.pay ? [`Cards are paid at  ${standIns.pay.url}   (nothing is taken)`] : []),
       '',
       'Sign in as <first name>@sallowbeck.example with the password slow-hands-true-numbers',
-      '  imre, bettany (students)   hanne (lead instructor)   and everybody else of the school',
+      '  imre, bettany (students)   freya (finished)   hanne (lead instructor)   corin (office)   ingrid (safety)',
+      `Strangers ask for a place at ${url}/courses`,
       '',
       'Ctrl-C ends it.',
     ].join('\n'))
