@@ -21,7 +21,7 @@ export function actionWords(action: string): string {
   return words[action] ?? action.replaceAll(/[-.]/g, ' ')
 }
 
-/** "roles: student, admin; again: yes" of an event's detail, which is JSON; ids are left out, the record has them. */
+/** "roles: student, admin; again: yes" of an event's detail, which is JSON; ids and hashes are left out, the record has them. */
 export function detailWords(detail: string): string {
   const given: unknown = JSON.parse(detail)
   if (typeof given !== 'object' || given === null) return ''
@@ -35,7 +35,7 @@ export function detailWords(detail: string): string {
 function valueWords(value: unknown): string {
   if (typeof value === 'boolean') return value ? 'yes' : 'no'
   if (typeof value === 'number') return String(value)
-  if (typeof value === 'string') return /^[0-9a-f]{8}-[0-9a-f-]{27}$/.test(value) ? '' : value
+  if (typeof value === 'string') return /^([0-9a-f]{8}-[0-9a-f-]{27}|[0-9a-f]{32,})$/.test(value) ? '' : value
   if (Array.isArray(value)) return value.map(valueWords).filter(Boolean).join(', ')
   return ''
 }
