@@ -46,7 +46,7 @@ export async function movePlace(em: EntityManager, app: App, actor: Actor, id: s
 async function move(tx: EntityManager, app: App, actor: Actor, id: string, { to, cause, note }: MoveInput): Promise<string> {
   const target = await lockBoth(tx, id, to)
   const { place, cohort } = await lockPlace(tx, id)
-  if (place.state !== 'deposit-paid' && place.state !== 'confirmed') throw new Refusal('place_state')
+  if (place.state !== 'deposit-paid' && place.state !== 'confirmed' && place.state !== 'here') throw new Refusal('place_state')
   if (place.movedFromId) throw new Refusal('place_moved_once')
   if (target.id === cohort.id) throw new Refusal('place_in_cohort')
   if (schoolDay(app.clock.schoolNow()) >= target.startsOn) throw new Refusal('cohort_not_open', 'That cohort has begun.')
@@ -57,7 +57,7 @@ async function move(tx: EntityManager, app: App, actor: Actor, id: string, { to,
 
   const now = app.clock.schoolNow()
   // Taken from a list: the office confirmed it before any money came.
-  const onTrust = place.state === 'confirmed' && ((await placeMoney(tx, [place.id])).get(place.id) ?? nothingPaid).paidMinor < cohort.priceMinor
+  const onTrust = place.state !== 'deposit-paid' && ((await placeMoney(tx, [place.id])).get(place.id) ?? nothingPaid).paidMinor < cohort.priceMinor
   const moved = tx.create(BenchPlace, {
     ...emptyPlace, cohort: target, person: place.person ? tx.getReference(User, place.person.id) : null, name: place.name, email: place.email, note: withNote(place.note, note),
     // What was confirmed by money stays so only where it covers the new price.

@@ -149,6 +149,20 @@ describe('moving', () => {
     expect(await act(place, 'move', { to: 'MOV-12', cause: 'student' })).toMatchObject({ status: 409, body: { code: 'move_not_allowed' } })
     expect(await act(place, 'move', { to: 'MOV-12', cause: 'illness' })).toMatchObject({ status: 201 })
   })
+
+  it('moves somebody who falls ill after the start, once, with all the money', async () => {
+    const today = harness.app.clock.schoolNow()
+    const day = (days: number) => new Date(today.getTime() + days * 86_400_000).toISOString().slice(0, 10)
+    await office.cohort({ code: 'MOV-13', startsOn: day(30), endsOn: day(118) })
+    await office.cohort({ code: 'MOV-14', startsOn: '2027-06-21', endsOn: '2027-09-18' })
+    const place = await booked('MOV-13', 'Wen Fellill')
+    expect(await act(place, 'bank-payments', { purpose: 'balance', amountMinor: 210_000, reference: 'BANK 13', on: day(0) })).toMatchObject({ body: { state: 'confirmed' } })
+    office.wait(31 * 24 * 60)
+    expect(await act(place, 'steps', { step: 'here' })).toMatchObject({ status: 200, body: { state: 'here' } })
+    expect(await act(place, 'move', { to: 'MOV-14', cause: 'student' })).toMatchObject({ status: 409, body: { code: 'move_not_allowed' } })
+    expect(await act(place, 'move', { to: 'MOV-14', cause: 'illness' })).toMatchObject({ status: 201, body: { state: 'confirmed', paid: { minor: 245_000 } } })
+    expect(await view(place)).toMatchObject({ state: 'moved', slot: null })
+  })
 })
 
 describe('orders', () => {
