@@ -75,7 +75,11 @@ export class Webhooks {
     fetch(target, {
       method: 'POST', body, redirect: 'manual', signal: AbortSignal.timeout(answerWithinMs),
       headers: { 'content-type': 'application/json; charset=utf-8', 'stripe-signature': `t=${seconds},v1=${signature}` },
-    }).then(answer => answer.ok, () => false).then((taken) => {
+    }).then(async (answer) => {
+      // Read to its end, so that the line is free for the next.
+      await answer.arrayBuffer()
+      return answer.ok
+    }).catch(() => false).then((taken) => {
       if (this.ended) return
       const wait = waits[tries + 1]
       if (taken) this.store.commit([['deliveries', { id: event.id, state: 'done' }]])
