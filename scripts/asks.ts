@@ -16,7 +16,8 @@ import { Cohort } from '#server/db/entities/Cohort'
 import { Course } from '#server/db/entities/Course'
 import { migrations } from '#server/db/migrations/index'
 import { readConfig } from '#server/utils/config'
-import { addDays, schoolDay } from '#shared/contract/school-day'
+import { schoolDay } from '#shared/contract/school-day'
+import { dayAfter } from '#shared/domain/money/calendar-days'
 import { askRound, type AskRound } from './lib/ask-round'
 import { ensureBuild } from './lib/ensure-build'
 import { testCluster } from './lib/own-cluster'
@@ -65,10 +66,10 @@ function isWell({ asked, places, taken, newOnes, waiting, numbersWhole, auditInO
 }
 
 async function makeCohort(em: EntityManager, code: string, places: number): Promise<Cohort> {
-  const startsOn = addDays(schoolDay(new Date()), 120)
+  const startsOn = dayAfter(schoolDay(new Date()), 120)
   return em.transactional(async (tx) => {
     const course = await tx.findOne(Course, { code: 'asks' }) ?? tx.create(Course, { code: 'asks', title: 'A course to ask for', summary: '', createdAt: new Date() })
-    return tx.create(Cohort, { course, code, name: code, startsOn, endsOn: addDays(startsOn, 90), pattern: 'evenings', places, open: true, priceMinor: 245_000, depositMinor: 35_000, currency: 'GBP', lastListNumber: 0, createdAt: new Date() })
+    return tx.create(Cohort, { course, code, name: code, startsOn, endsOn: dayAfter(startsOn, 90), pattern: 'evenings', places, open: true, priceMinor: 245_000, depositMinor: 35_000, currency: 'GBP', lastListNumber: 0, createdAt: new Date() })
   })
 }
 

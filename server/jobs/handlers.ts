@@ -1,4 +1,5 @@
 import { sealAudit } from '../services/audit/seal-audit'
+import { forgetAnswers } from '../services/jobs/forget-answers'
 import { deliverMail } from '../services/mail/deliver-mail'
 import { hashMedia } from '../services/media/hash-media'
 import { applyPayment } from '../services/money/apply-payment'
@@ -26,5 +27,6 @@ export const handlers: { [Name in QueueName]: (app: App, data: JobData[Name]) =>
   'send-mail': (app, { mailId }) => deliverMail(app, mailId),
   'seal-audit': async (app, { reason }) => void await sealAudit(app.orm.em.fork(), reason),
   'send-reminders': async app => void await sendReminders(app, app.clock.schoolNow()),
+  'forget-answers': async app => void await forgetAnswers(app.orm.em.fork(), app.clock.now()),
   'clear-uploads': async app => void await clearUploads(app),
 }

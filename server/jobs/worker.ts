@@ -17,6 +17,7 @@ export async function startWorker(app: App): Promise<void> {
   await app.boss.schedule('pass-offers', '* * * * *', { cohortId: null })
   await app.boss.schedule('send-reminders', '7 * * * *', {})
   await app.boss.schedule('sweep-payments', '*/3 * * * *', {})
+  await app.boss.schedule('forget-answers', '47 3 * * *', {})
   await app.boss.schedule('clear-uploads', '17 3 * * *', {})
   // Not awaited: new work need not stand behind it.
   void resumeScoring(app).catch(fault => console.error('jobs: taking scoring up again:', fault))

@@ -14,6 +14,7 @@ export const queues = {
   'send-mail': { policy: 'standard', retryLimit: 12, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'seal-audit': { policy: 'short', retryLimit: 3, retryDelay: 5, retryBackoff: true, expireInSeconds: 60 },
   'send-reminders': { policy: 'short', retryLimit: 5, retryDelay: 60, retryBackoff: true, expireInSeconds: 600 },
+  'forget-answers': { policy: 'short', retryLimit: 3, retryDelay: 60, retryBackoff: true, expireInSeconds: 600 },
   'clear-uploads': { policy: 'short', retryLimit: 3, retryDelay: 60, retryBackoff: true, expireInSeconds: 600 },
 } as const
 
@@ -33,5 +34,6 @@ export interface JobData {
   'send-mail': { mailId: string }
   'seal-audit': { reason: string }
   'send-reminders': Record<string, never>
+  'forget-answers': Record<string, never>
   'clear-uploads': Record<string, never>
 }

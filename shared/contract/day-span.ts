@@ -1,4 +1,4 @@
-import { dayInWords } from './school-day'
+import { dayInWords } from '../domain/money/calendar-days'
 
 /** "21 September to 18 December 2026": the year twice only where there are two. Days are YYYY-MM-DD. */
 export function daySpan(from: string, until: string): string {

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import { isDay } from './school-day'
+import { isDay } from '../domain/money/calendar-days'
 import { cleanText, someText } from './text'
 
 /** An amount in minor units: 35000 GBP is 350.00 pounds. Never a fraction. */

@@ -81,7 +81,7 @@ export interface PlaceView extends PlaceRow {
   /** Steps of handbook 5.4 this place may take now. */
   steps: PlaceStep[]
 }
-export const placeSteps = ['offer', 'withdraw-offer', 'here', 'finish', 'stop'] as const
+export const placeSteps = ['offer', 'withdraw-offer', 'here', 'finish'] as const
 export type PlaceStep = (typeof placeSteps)[number]
 export const placeStepInput = z.object({ step: z.enum(placeSteps), note: cleanText(500).default('') }).strict()
 export type PlaceStepInput = z.infer<typeof placeStepInput>

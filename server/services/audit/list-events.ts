@@ -15,7 +15,7 @@ const orders: Record<Query['sort'], KeysetOrder> = {
 interface Row { id: string, page_key: string, at: string, actor: string, name: string | null, action: string, subject: string, about: string | null, detail: string, number: number | null, sealed: boolean }
 
 /** What a safety officer answers for: tools, consent, stops. */
-const safetyActions = ['head-stopped', 'stop-lifted', 'clearance-given', 'clearance-withdrawn', 'consent-signed', 'sharing-changed', 'consent-text-saved']
+const safetyActions = ['head-stopped', 'stop-lifted', 'clearance-given', 'clearance-withdrawn', 'consent-signed', 'consent-text-saved', 'safety-note-changed']
 
 /** Heads of these cohorts and everything that hangs on them. */
 const ofCohorts = `(

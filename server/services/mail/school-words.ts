@@ -1,4 +1,4 @@
-import { dayInWords, weekdayOf } from '#shared/contract/school-day'
+import { dayInWords, weekdayOf } from '#shared/domain/money/calendar-days'
 import { longDate, timeOfDay } from '#shared/contract/school-time'
 
 /** "Monday 21 September 2026", of a day as YYYY-MM-DD. */

@@ -43,7 +43,7 @@ export async function decideRefund(tx: EntityManager, app: App, actor: Pick<Acto
   }))
   tx.persist(refunds)
   for (const refund of refunds) {
-    recordEvent(tx, { actor: actor?.id ?? 'school', action: 'refund-decided', subject: `place:${place.id}`, detail: { refund: refund.id, rule, amountMinor: refund.amountMinor, by: refund.payment ? 'card' : 'bank' } })
+    recordEvent(tx, { actor: actor?.id ?? 'school', action: 'refund-decided', subject: `place:${place.id}`, detail: { refund: refund.id, rule, amountMinor: refund.amountMinor, currency: refund.currency, by: refund.payment ? 'card' : 'bank' } })
   }
   await tx.flush()
   for (const refund of refunds.filter(one => one.payment)) await enqueue(app, tx, 'send-refund', { refundId: refund.id })

@@ -5,8 +5,7 @@ import { Payment } from '#server/db/entities/Payment'
 import { PaymentEvent } from '#server/db/entities/PaymentEvent'
 import type { App } from '#server/utils/app'
 import { enqueue } from '#server/utils/enqueue'
-
-const uuid = /^[0-9a-f]{8}(?:-[0-9a-f]{4}){3}-[0-9a-f]{12}$/
+import { isUuid } from '#server/utils/is-uuid'
 
 /**
  * Keeps a message of the card processor, once, and with it the work of looking how the payment stands. One that is about nothing of
@@ -29,7 +28,7 @@ export function keepPaymentMessage(em: EntityManager, app: App, message: Payment
 
 /** Id of the payment a message is about. */
 async function paymentOf(tx: EntityManager, { reference, about, intentId }: PaymentMessage): Promise<string | null> {
-  const said = reference && uuid.test(reference) ? await tx.findOne(Payment, { id: reference }) : null
+  const said = isUuid(reference) ? await tx.findOne(Payment, { id: reference }) : null
   if (said) return said.id
   const known = (about ? await tx.findOne(Payment, { sessionId: about }) : null) ?? (intentId ? await tx.findOne(Payment, { intentId }) : null)
   if (known) return known.id

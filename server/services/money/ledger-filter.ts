@@ -1,6 +1,7 @@
 import type { z } from 'zod'
 import type { ledgerFilter } from '#shared/contract/money'
-import { addDays, startOfDay } from '#shared/contract/school-day'
+import { startOfDay } from '#shared/contract/school-day'
+import { dayAfter } from '#shared/domain/money/calendar-days'
 import { anywhere } from '#server/utils/keyset'
 
 /** Tables every reading of the ledger begins with. */
@@ -29,6 +30,6 @@ export function ledgerWhere(filter: z.output<typeof ledgerFilter>): { where: str
   if (filter.cohort) add('c.code = ?', filter.cohort)
   if (filter.kind) add('l.kind = ?', filter.kind)
   if (filter.from) add('l.at >= ?', startOfDay(filter.from))
-  if (filter.until) add('l.at < ?', startOfDay(addDays(filter.until, 1)))
+  if (filter.until) add('l.at < ?', startOfDay(dayAfter(filter.until, 1)))
   return { where, values }
 }

@@ -22,13 +22,7 @@ const chain = `with recursive chain as (
  */
 export async function moneyOfPlace(em: EntityManager, placeId: string): Promise<MoneyOfPlace> {
   const run = <Row>(sql: string, values: unknown[]) => em.getConnection().execute<Row[]>(sql, values, 'all', em.getTransactionContext())
-  const sums = await run<{ purpose: PaymentPurpose, minor: number }>(`
-    select purpose, sum(minor)::int as minor from (
-      select purpose, amount_minor as minor from ledger_line where place_id = ?
-      union all select r.purpose, -r.amount_minor from refund r where r.place_id = ? and r.state <> 'refused' and not exists (select 1 from ledger_line l where l.refund_id = r.id)
-    ) as moved group by purpose`, [placeId, placeId])
-  const held: MoneyOfPlace['held'] = { deposit: 0, balance: 0, renewal: 0 }
-  for (const { purpose, minor } of sums) held[purpose] = minor
+  const held = (await heldOfPlaces(em, [placeId])).get(placeId) ?? nothingHeld()
 
   const cards = await run<{ id: string, purpose: PaymentPurpose, left: number }>(`${chain}
     select p.id, p.purpose,
@@ -42,4 +36,19 @@ export async function moneyOfPlace(em: EntityManager, placeId: string): Promise<
     cards: cards.filter(card => card.left > 0).map(card => ({ paymentId: card.id, purpose: card.purpose, leftMinor: card.left })),
     depositPaidAt: deposit?.at ? new Date(deposit.at) : null,
   }
+}
+
+const nothingHeld = (): MoneyOfPlace['held'] => ({ deposit: 0, balance: 0, renewal: 0 })
+
+/** What the school holds of some places: the ledger, less refunds decided that are not in it yet. One without money is left out. */
+export async function heldOfPlaces(em: EntityManager, placeIds: readonly string[]): Promise<Map<string, MoneyOfPlace['held']>> {
+  const ids = `{${placeIds.join(',')}}`
+  const sums = await em.getConnection().execute<{ place_id: string, purpose: PaymentPurpose, minor: number }[]>(`
+    select place_id, purpose, sum(minor)::int as minor from (
+      select place_id, purpose, amount_minor as minor from ledger_line where place_id = any(?::uuid[])
+      union all select r.place_id, r.purpose, -r.amount_minor from refund r where r.place_id = any(?::uuid[]) and r.state <> 'refused' and not exists (select 1 from ledger_line l where l.refund_id = r.id)
+    ) as moved group by place_id, purpose`, [ids, ids], 'all', em.getTransactionContext())
+  const held = new Map<string, MoneyOfPlace['held']>()
+  for (const { place_id: id, purpose, minor } of sums) held.set(id, { ...held.get(id) ?? nothingHeld(), [purpose]: minor })
+  return held
 }

@@ -3,7 +3,7 @@ import { Refund } from '#server/db/entities/Refund'
 import type { App } from '#server/utils/app'
 import type { OpenMoneyView } from '#shared/contract/money'
 import { listDue } from './list-due'
-import { moneyOfPlace } from './money-of-place'
+import { heldOfPlaces } from './money-of-place'
 import { refundViews } from './refund-view'
 
 const most = 500
@@ -15,12 +15,8 @@ export async function openMoney(em: EntityManager, app: Pick<App, 'clock'>): Pro
     order by (r.state = 'refused') desc, r.decided_at, r.id limit ${most}`)
   const refunds = await em.find(Refund, { id: { $in: rows.map(row => row.id) } })
   const ordered = rows.flatMap(row => refunds.find(one => one.id === row.id) ?? [])
-  const open: Refund[] = []
-  for (const refund of ordered) if (refund.state !== 'refused' || await isStillOwed(em, refund)) open.push(refund)
+  // A refused refund is over once its money went another way: the school does not hold that much any more.
+  const held = await heldOfPlaces(em, ordered.filter(one => one.state === 'refused').map(one => one.place.id))
+  const open = ordered.filter(one => one.state !== 'refused' || (held.get(one.place.id)?.[one.purpose] ?? 0) >= one.amountMinor)
   return { due: (await listDue(em, app)).slice(0, most), refunds: await refundViews(em, open) }
-}
-
-/** A refused refund is over once its money went another way: the school does not hold that much any more. */
-async function isStillOwed(em: EntityManager, refund: Refund): Promise<boolean> {
-  return (await moneyOfPlace(em, refund.place.id)).held[refund.purpose] >= refund.amountMinor
 }

@@ -20,6 +20,7 @@ import { splitRefund } from './split-refund'
 export async function quoteRefund(em: EntityManager, app: Pick<App, 'clock'>, place: Pick<BenchPlace, 'id'>, { cause, on }: { cause: CancelCause, on?: string }): Promise<RefundQuote> {
   const { cohort, movedFromId } = await em.findOneOrFail(BenchPlace, { id: place.id })
   const { id: cohortId, startsOn, endsOn, currency } = await em.findOneOrFail(Cohort, { id: cohort.id })
+  const movedFrom = movedFromId ? await em.findOneOrFail(BenchPlace, { id: movedFromId }) : null
   const money = await moneyOfPlace(em, place.id)
   const waiting = await em.count(BenchPlace, { cohort: cohortId, state: 'waiting-list' })
   const cancelledOn = on ?? schoolDay(app.clock.schoolNow())
@@ -30,7 +31,7 @@ export async function quoteRefund(em: EntityManager, app: Pick<App, 'clock'>, pl
   const due = refundDue({
     paidDepositMinor, paidBalanceMinor, startsOn, cancelledOn, cause, weeks,
     depositPaidOn: money.depositPaidAt && schoolDay(money.depositPaidAt),
-    moveUsed: movedFromId !== null && movedFromId !== undefined,
+    moveUsed: movedFrom !== null && movedFrom.endedBecause !== 'school',
     placeFilled: waiting > 0,
     weeksUsed: weeksBegun(startsOn, cancelledOn, weeks),
   })

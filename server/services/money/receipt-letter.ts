@@ -7,7 +7,8 @@ import { renewalReceived } from '#server/services/mail/templates/renewal-receive
 import { placeLink } from '#server/services/places/place-link'
 import type { App } from '#server/utils/app'
 import { moneyText } from '#shared/contract/money'
-import { dayInWords, schoolDay } from '#shared/contract/school-day'
+import { schoolDay } from '#shared/contract/school-day'
+import { dayInWords } from '#shared/domain/money/calendar-days'
 import type { Payer } from './payer-of'
 import type { ReceiptFacts } from './receipt-facts'
 

@@ -3,7 +3,7 @@ import { dateInWords } from '#server/services/mail/school-words'
 import type { SchoolDetails } from '#server/services/school/school-details'
 import { moneyText } from '#shared/contract/money'
 import { receiptNumber } from '#shared/contract/receipt-number'
-import { dayInWords } from '#shared/contract/school-day'
+import { dayInWords } from '#shared/domain/money/calendar-days'
 import type { ReceiptFacts } from './receipt-facts'
 
 /** What stands on the paper. */

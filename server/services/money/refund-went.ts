@@ -8,8 +8,8 @@ import { writeMail } from '#server/services/mail/write-mail'
 import { placeLink } from '#server/services/places/place-link'
 import type { App } from '#server/utils/app'
 import { moneyText } from '#shared/contract/money'
-import { dayInWords, schoolDay } from '#shared/contract/school-day'
-import { daysBetween } from '#shared/domain/money/calendar-days'
+import { schoolDay } from '#shared/contract/school-day'
+import { dayInWords, daysBetween } from '#shared/domain/money/calendar-days'
 import { payerOf } from './payer-of'
 
 /**

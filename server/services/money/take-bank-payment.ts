@@ -32,7 +32,7 @@ export async function takeBankPayment(em: EntityManager, app: App, actor: Pick<A
         by: tx.getReference(User, actor.id), at: startOfDay(input.on), writtenAt: app.clock.schoolNow(),
       })
       tx.persist(line)
-      notePlace(tx, place, actor, 'place-bank-payment', { line: line.id, purpose: input.purpose, minor: input.amountMinor })
+      notePlace(tx, place, actor, 'place-bank-payment', { line: line.id, purpose: input.purpose, minor: input.amountMinor, currency: cohort.currency })
       await tx.flush()
       const paid = (await placeMoney(tx, [place.id])).get(place.id) ?? nothingPaid
       const outcome = input.purpose === 'balance' ? await balancePaid(tx, app, place, line) : paid.depositMinor < cohort.depositMinor ? 'booked' : await depositPaid(tx, app, place, line)

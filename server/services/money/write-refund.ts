@@ -6,11 +6,10 @@ import type { Payment } from '#server/db/entities/Payment'
 import { Refund } from '#server/db/entities/Refund'
 import type { App } from '#server/utils/app'
 import { recordEvent } from '#server/utils/record-event'
+import { isUuid } from '#server/utils/is-uuid'
 import { refundWent } from './refund-went'
 import { refuseRefund } from './refuse-refund'
 import { schoolInstant } from './school-instant'
-
-const uuid = /^[0-9a-f]{8}(?:-[0-9a-f]{4}){3}-[0-9a-f]{12}$/
 
 /**
  * Writes a refund that went into the ledger, once, and tells its owner. One that somebody made at the processor, without a decision
@@ -35,7 +34,7 @@ export async function writeRefund(tx: EntityManager, app: App, payment: Payment,
 
 /** Our decision behind a refund of the processor's, by what we called it when we asked, or by the id it gave. */
 async function decided(tx: EntityManager, payment: Payment, state: RefundState): Promise<Refund | null> {
-  const named = state.reference && uuid.test(state.reference) ? await tx.findOne(Refund, { id: state.reference, payment: payment.id }, { refresh: true }) : null
+  const named = isUuid(state.reference) ? await tx.findOne(Refund, { id: state.reference, payment: payment.id }, { refresh: true }) : null
   return named ?? await tx.findOne(Refund, { providerId: state.id, payment: payment.id }, { refresh: true })
 }
 

@@ -24,7 +24,7 @@ const words: Record<PlaceAction, (detail: Record<string, unknown>) => string> = 
   'place-moved-here': ({ from }) => `Moved here from ${text(from)}`,
   'place-from-roster': () => 'Taken from a list',
   'place-overdue': () => 'The balance is late: on the list of the office',
-  'place-bank-payment': ({ minor, currency }) => `Bank payment of ${moneyText({ minor: Number(minor), currency: text(currency) || 'GBP' })} written down`,
+  'place-bank-payment': ({ minor, currency }) => `Bank payment of ${moneyText({ minor: Number(minor), currency: text(currency) })} written down`,
 }
 
 function causeWords(cause: unknown): string {
@@ -35,6 +35,6 @@ function causeWords(cause: unknown): string {
 export function historyWords(action: string, detail: Record<string, unknown>): string {
   const known = words[action as PlaceAction] as ((detail: Record<string, unknown>) => string) | undefined
   if (known) return known(detail)
-  if (action === 'refund-decided') return `Refund of ${moneyText({ minor: Number(detail.amountMinor), currency: 'GBP' })} decided`
+  if (action === 'refund-decided') return `Refund of ${moneyText({ minor: Number(detail.amountMinor), currency: text(detail.currency) })} decided`
   return action.replaceAll('-', ' ').replace(/^./, letter => letter.toUpperCase())
 }

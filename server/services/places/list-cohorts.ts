@@ -13,7 +13,7 @@ export function toCohortRow(cohort: Cohort, { taken, waiting }: PlaceCount = { t
 
 /** Cohorts a person may see, latest start first. A school has a handful a year. */
 export async function listCohorts(em: EntityManager, app: App, actor: Actor): Promise<CohortRow[]> {
-  const cohorts = await em.find(Cohort, await visibleCohorts(em, actor, app.clock.schoolNow()), { orderBy: { startsOn: 'desc', code: 'asc' } })
+  const cohorts = await em.find(Cohort, await visibleCohorts(em, app, actor), { orderBy: { startsOn: 'desc', code: 'asc' } })
   const counts = await countPlaces(em, cohorts.map(one => one.id))
   return cohorts.map(one => toCohortRow(one, counts.get(one.id)))
 }

@@ -47,11 +47,10 @@ async function move(tx: EntityManager, app: App, actor: Actor, id: string, { to,
   const target = await lockBoth(tx, id, to)
   const { place, cohort } = await lockPlace(tx, id)
   if (place.state !== 'deposit-paid' && place.state !== 'confirmed' && place.state !== 'here') throw new Refusal('place_state')
-  if (place.movedFromId) throw new Refusal('place_moved_once')
   if (target.id === cohort.id) throw new Refusal('place_in_cohort')
   if (schoolDay(app.clock.schoolNow()) >= target.startsOn) throw new Refusal('cohort_not_open', 'That cohort has begun.')
   const quote = await quoteRefund(tx, app, place, { cause })
-  if (!quote.mayMove) throw new Refusal('move_not_allowed', `By the rule this place cannot be moved: ${quote.wording}`)
+  if (!quote.mayMove) throw place.movedFromId ? new Refusal('place_moved_once') : new Refusal('move_not_allowed', `By the rule this place cannot be moved: ${quote.wording}`)
   const [slot] = await settleOffers(tx, app, target)
   if (slot === undefined) throw new Refusal('no_free_place')
 

@@ -5,7 +5,7 @@ import type { Actor } from '#server/utils/actor'
 import type { App } from '#server/utils/app'
 import { Refusal } from '#server/utils/refusal'
 import type { PlaceStepInput } from '#shared/contract/places'
-import { cancelPlace, withNote } from './cancel-place'
+import { withNote } from './cancel-place'
 import { lockPlace } from './lock-place'
 import { notePlace } from './note-place'
 import { backToList, offerFromList, settleOffers } from './settle-offers'
@@ -15,15 +15,14 @@ import { stepsOf } from './view-place'
 const accessYears = 2
 
 /**
- * One step of a place by the office.
+ * One step of a place by the office. Stopping is no step: it is cancelling for unsafe work, with its rule and sum (`cancelPlace`).
  *
- * @throws {Refusal} place_not_found, place_state, no_free_place, offer_open, and refund_changed where a stop would give money back: its sum is shown by Cancel
+ * @throws {Refusal} place_not_found, place_state, no_free_place, offer_open
  */
 export async function takePlaceStep(em: EntityManager, app: App, actor: Actor, id: string, { step, note }: PlaceStepInput): Promise<void> {
   await em.transactional(async (tx) => {
     const { place, cohort } = await lockPlace(tx, id)
     if (!stepsOf(place).includes(step)) throw new Refusal('place_state')
-    if (step === 'stop') return cancelPlace(tx, app, actor, id, { cause: 'unsafe-work', seenMinor: 0, note })
     place.note = withNote(place.note, note)
     if (step === 'offer') {
       const [slot] = await settleOffers(tx, app, cohort)

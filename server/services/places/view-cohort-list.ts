@@ -14,7 +14,7 @@ import { listOrder } from './settle-offers'
 /** A cohort's people for the wall of the shop: bench, head, safety form and clearances as they stand now, and who waits. @throws {Refusal} cohort_not_found */
 export async function viewCohortList(em: EntityManager, app: App, actor: Actor, code: string): Promise<CohortListView> {
   const now = app.clock.schoolNow()
-  const cohort = await findVisibleCohort(em, actor, code, now)
+  const cohort = await findVisibleCohort(em, app, actor, code)
   const places = await em.find(BenchPlace, { cohort: cohort.id, state: { $in: ['offered', 'deposit-paid', 'confirmed', 'here', 'finished'] } }, { orderBy: { slot: 'asc', name: 'asc' } })
   const people = places.flatMap(place => place.person?.id ?? [])
   const heads = await em.find(PracticeHead, { cohort: cohort.id, student: { $in: people } }, { orderBy: { receivedAt: 'desc' } })

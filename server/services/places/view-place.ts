@@ -1,19 +1,17 @@
 import type { EntityManager } from '@mikro-orm/postgresql'
 import { AuditEvent } from '#server/db/entities/AuditEvent'
-import type { BenchPlace } from '#server/db/entities/BenchPlace'
-import { BenchPlace as Places } from '#server/db/entities/BenchPlace'
+import { BenchPlace } from '#server/db/entities/BenchPlace'
 import { LedgerLine } from '#server/db/entities/LedgerLine'
 import { Receipt } from '#server/db/entities/Receipt'
 import { Refund } from '#server/db/entities/Refund'
 import { PurchaseOrder } from '#server/db/entities/Sponsor'
 import { User } from '#server/db/entities/User'
+import { isUuid } from '#server/utils/is-uuid'
 import { receiptNumber } from '#shared/contract/receipt-number'
 import type { PlaceStep, PlaceView } from '#shared/contract/places'
 import { findPlace } from './find-place'
 import { historyWords } from './history-words'
 import { dueMinor, nothingPaid, placeMoney } from './place-money'
-
-const uuid = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/
 
 /** A place with all that happened to it, for the office. @throws {Refusal} place_not_found */
 export async function viewPlace(em: EntityManager, id: string): Promise<PlaceView> {
@@ -26,7 +24,7 @@ export async function viewPlace(em: EntityManager, id: string): Promise<PlaceVie
   const lines = await em.find(LedgerLine, { place: id }, { orderBy: { at: 'asc', id: 'asc' } })
   const receipts = await em.find(Receipt, { line: { $in: lines.map(line => line.id) } })
   const refunds = await em.find(Refund, { place: id }, { orderBy: { decidedAt: 'asc', id: 'asc' } })
-  const movedFrom = place.movedFromId ? await em.findOne(Places, { id: place.movedFromId }, { populate: ['cohort'] }) : null
+  const movedFrom = place.movedFromId ? await em.findOne(BenchPlace, { id: place.movedFromId }, { populate: ['cohort'] }) : null
   return {
     id, cohort: { code: cohort.code, name: cohort.name }, name: place.name, email: place.email, state: place.state, slot: place.slot ?? null, listNumber: place.listNumber ?? null,
     askedAt: place.askedAt?.toISOString() ?? null, heldUntil: place.heldUntil?.toISOString() ?? null,
@@ -47,14 +45,14 @@ export async function viewPlace(em: EntityManager, id: string): Promise<PlaceVie
 
 async function historyOf(em: EntityManager, place: BenchPlace): Promise<PlaceView['history']> {
   const events = await em.find(AuditEvent, { subject: `place:${place.id}` }, { orderBy: { at: 'asc', id: 'asc' } })
-  const people = await em.find(User, { id: { $in: [...new Set(events.map(event => event.actor).filter(actor => uuid.test(actor)))] } })
+  const people = await em.find(User, { id: { $in: [...new Set(events.map(event => event.actor).filter(isUuid))] } })
   return events.map(({ at, action, detail, actor }) => ({ at: at.toISOString(), what: historyWords(action, JSON.parse(detail) as Record<string, unknown>), by: people.find(one => one.id === actor)?.name ?? null }))
 }
 
 /** Steps of handbook 5.4 that a place may take by a button. What gives money back, moves or takes an order has its own form. */
 export function stepsOf({ state }: Pick<BenchPlace, 'state'>): PlaceStep[] {
   const steps: Partial<Record<BenchPlace['state'], PlaceStep[]>> = {
-    'asked': ['offer'], 'waiting-list': ['offer'], 'offered': ['withdraw-offer'], 'confirmed': ['here'], 'here': ['finish', 'stop'],
+    'asked': ['offer'], 'waiting-list': ['offer'], 'offered': ['withdraw-offer'], 'confirmed': ['here'], 'here': ['finish'],
   }
   return steps[state] ?? []
 }

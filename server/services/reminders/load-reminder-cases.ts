@@ -4,11 +4,9 @@ import { ConsentText } from '#server/db/entities/Consent'
 import { PurchaseOrder } from '#server/db/entities/Sponsor'
 import { dueMinor, nothingPaid, placeMoney } from '#server/services/places/place-money'
 import { consentStates } from '#server/services/safety/consent-states'
-import { addDays, schoolDay } from '#shared/contract/school-day'
+import { schoolDay } from '#shared/contract/school-day'
+import { balanceDueOn } from '#shared/domain/money/balance-due-on'
 import type { ReminderCase } from './reminders-due'
-
-/** A balance falls due so many days before the start (handbook 5.4). */
-const balanceDueDays = 28
 
 export interface LoadedReminderCase { place: Loaded<BenchPlace, 'cohort' | 'person'>, of: ReminderCase }
 
@@ -23,13 +21,14 @@ export async function loadReminderCases(em: EntityManager, where: FilterQuery<Be
   const [text] = await em.find(ConsentText, {}, { orderBy: { version: 'desc' }, limit: 1 })
   return places.map((place) => {
     const cohort = place.cohort.$
+    const bookedOn = schoolDay(place.depositPaidAt ?? place.confirmedAt ?? place.createdAt)
     return {
       place,
       of: {
         state: place.state,
-        bookedOn: schoolDay(place.depositPaidAt ?? place.confirmedAt ?? place.createdAt),
+        bookedOn,
         startsOn: cohort.startsOn,
-        balanceDueOn: addDays(cohort.startsOn, -balanceDueDays),
+        balanceDueOn: balanceDueOn(cohort.startsOn, bookedOn),
         dueMinor: dueMinor(place.state, cohort, paid.get(place.id) ?? nothingPaid) ?? 0,
         ordered: orders.has(place.id),
         consent: (place.person && consents.get(place.person.id)) ?? 'none',

@@ -1,5 +1,5 @@
 import type { PlaceState } from '#server/db/entities/BenchPlace'
-import { addDays, daysBetween } from '#shared/contract/school-day'
+import { dayAfter, daysBetween } from '#shared/domain/money/calendar-days'
 import type { ConsentState } from '#shared/contract/safety'
 
 /** What reminders of a place follow from. Days are YYYY-MM-DD of the school's calendar. */
@@ -8,6 +8,7 @@ export interface ReminderCase {
   /** When the place became theirs: nobody is reminded of what fell due before. */
   bookedOn: string
   startsOn: string
+  /** The day the balance is asked for: the day it was booked, where that is later than the usual one. */
   balanceDueOn: string
   /** Still to be paid, minor units; 0 when nothing is. */
   dueMinor: number
@@ -37,23 +38,20 @@ export const graceDays = 5
  * Reminders of a place that belong to a day. Each stays due until the next of its kind takes over, so that a worker that was down for
  * a day leaves nobody without; written under `kind:place:on`, each goes once.
  *
- * A balance falls due the day the place was booked where that is later. Source: handbook 5.4 and 5.5.
+ * Source: handbook 5.4 and 5.5.
  */
 export function remindersDue(place: ReminderCase, today: string): Reminder[] {
   return [safetyForm(place, today), ...balance(place, today), welcome(place, today), access(place, today)].filter(one => one !== null)
 }
 
 /** Since when a place is on the office's list for a late balance, or null: the sixth day. Nothing is taken away by that. */
-export function overdueSince(place: Pick<ReminderCase, 'state' | 'bookedOn' | 'balanceDueOn' | 'dueMinor' | 'ordered'>, today: string): string | null {
+export function overdueSince(place: Pick<ReminderCase, 'state' | 'balanceDueOn' | 'dueMinor' | 'ordered'>, today: string): string | null {
   if (!owes(place)) return null
-  const since = addDays(dueOn(place), graceDays + 1)
+  const since = dayAfter(place.balanceDueOn, graceDays + 1)
   return today >= since ? since : null
 }
 
 const owes = (place: Pick<ReminderCase, 'state' | 'dueMinor' | 'ordered'>) => place.state === 'deposit-paid' && place.dueMinor > 0 && !place.ordered
-
-/** The day the balance is asked for: what was booked later than that is due at once. */
-const dueOn = (place: Pick<ReminderCase, 'bookedOn' | 'balanceDueOn'>) => place.bookedOn > place.balanceDueOn ? place.bookedOn : place.balanceDueOn
 
 function safetyForm(place: ReminderCase, today: string): Reminder | null {
   const coming = ['deposit-paid', 'confirmed', 'here'].includes(place.state)
@@ -65,9 +63,9 @@ function safetyForm(place: ReminderCase, today: string): Reminder | null {
 
 function balance(place: ReminderCase, today: string): Reminder[] {
   if (!owes(place)) return []
-  const due = dueOn(place)
+  const due = place.balanceDueOn
   const daysLate = daysBetween(due, today)
-  if (daysLate >= 1 && daysLate <= graceDays) return [{ kind: 'balance-late', on: due, daysLate, heldUntil: addDays(due, graceDays + 1) }]
+  if (daysLate >= 1 && daysLate <= graceDays) return [{ kind: 'balance-late', on: due, daysLate, heldUntil: dayAfter(due, graceDays + 1) }]
   if (daysLate > 0) return []
   const on = newestOf(before.balance, due, today)
   return on !== null && place.bookedOn < on ? [{ kind: 'balance-due', on, inDays: daysBetween(today, due) }] : []
@@ -76,16 +74,16 @@ function balance(place: ReminderCase, today: string): Reminder[] {
 /** Whoever booked late needs to know what to bring all the same. */
 function welcome(place: ReminderCase, today: string): Reminder | null {
   const coming = ['deposit-paid', 'confirmed', 'here'].includes(place.state)
-  return coming && today >= addDays(place.startsOn, -before.welcome) && today <= place.startsOn ? { kind: 'welcome', on: place.startsOn } : null
+  return coming && today >= dayAfter(place.startsOn, -before.welcome) && today <= place.startsOn ? { kind: 'welcome', on: place.startsOn } : null
 }
 
 function access(place: ReminderCase, today: string): Reminder | null {
   const { accessUntil } = place
   if (place.state !== 'finished' || accessUntil === null) return null
-  return today >= addDays(accessUntil, -before.access) && today <= accessUntil ? { kind: 'alumni-ending', on: accessUntil } : null
+  return today >= dayAfter(accessUntil, -before.access) && today <= accessUntil ? { kind: 'alumni-ending', on: accessUntil } : null
 }
 
 /** The last of some days before another that has come; null before the first. */
 function newestOf(days: readonly number[], of: string, today: string): string | null {
-  return days.map(count => addDays(of, -count)).filter(day => day <= today).at(-1) ?? null
+  return days.map(count => dayAfter(of, -count)).filter(day => day <= today).at(-1) ?? null
 }

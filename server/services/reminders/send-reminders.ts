@@ -18,12 +18,14 @@ import { notePlace } from '#server/services/places/note-place'
 import { placeLink } from '#server/services/places/place-link'
 import type { App } from '#server/utils/app'
 import { renewalMinor } from '#shared/contract/money'
-import { schoolDay, schoolHour } from '#shared/contract/school-day'
+import { schoolDay, schoolHour, startOfDay } from '#shared/contract/school-day'
 import { loadReminderCases, type LoadedReminderCase } from './load-reminder-cases'
 import { overdueSince, remindersDue, type Reminder } from './reminders-due'
 
 /** Nobody is written to in the night. */
 const firstHour = 8
+/** Further ahead than any reminder of ending access goes out. */
+const accessAheadMs = 60 * 24 * 3_600_000
 
 export interface RemindersSent { written: number, listed: number }
 
@@ -38,16 +40,10 @@ export async function sendReminders(app: App, now: Date): Promise<RemindersSent>
   const sent: RemindersSent = { written: 0, listed: 0 }
   if (schoolHour(now) < firstHour) return sent
   const today = schoolDay(now)
-  const em = app.orm.em.fork()
   const faults: unknown[] = []
-  for (const { place, of } of await loadReminderCases(em, { state: { $in: ['deposit-paid', 'confirmed', 'here', 'finished'] } })) {
-    const due = remindersDue(of, today)
-    const keys = due.map(one => keyOf(place.id, one))
-    const written = keys.length === 0 ? 0 : await em.count(Mail, { key: { $in: keys } })
-    const late = overdueSince(of, today) !== null && await em.count(AuditEvent, { action: 'place-overdue', subject: `place:${place.id}` }) === 0
-    if (written === keys.length && !late) continue
+  for (const placeId of await placesToRemind(app.orm.em.fork(), now, today)) {
     try {
-      const one = await app.orm.em.fork().transactional(tx => remind(tx, app, place.id, today))
+      const one = await app.orm.em.fork().transactional(tx => remind(tx, app, placeId, today))
       sent.written += one.written
       sent.listed += one.listed
     }
@@ -57,6 +53,17 @@ export async function sendReminders(app: App, now: Date): Promise<RemindersSent>
   }
   if (faults.length > 0) throw new AggregateError(faults, `${faults.length} of the reminders could not be written`)
   return sent
+}
+
+/** Places with something due that was not written or listed yet, as they look unlocked. Of those who finished, only whose access ends soon. */
+async function placesToRemind(em: EntityManager, now: Date, today: string): Promise<string[]> {
+  const cases = (await loadReminderCases(em, { $or: [
+    { state: { $in: ['deposit-paid', 'confirmed', 'here'] } },
+    { state: 'finished', accessUntil: { $gte: startOfDay(today), $lt: new Date(now.getTime() + accessAheadMs) } },
+  ] })).map(({ place, of }) => ({ id: place.id, keys: remindersDue(of, today).map(one => keyOf(place.id, one)), late: overdueSince(of, today) !== null }))
+  const written = new Set((await em.find(Mail, { key: { $in: cases.flatMap(one => one.keys) } }, { fields: ['key'] })).map(mail => mail.key))
+  const listed = new Set((await em.find(AuditEvent, { action: 'place-overdue', subject: { $in: cases.filter(one => one.late).map(one => `place:${one.id}`) } }, { fields: ['subject'] })).map(event => event.subject))
+  return cases.filter(one => one.keys.some(key => !written.has(key)) || (one.late && !listed.has(`place:${one.id}`))).map(one => one.id)
 }
 
 async function remind(tx: EntityManager, app: App, placeId: string, today: string): Promise<RemindersSent> {

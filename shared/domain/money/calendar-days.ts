@@ -1,11 +1,19 @@
 const dayMs = 86_400_000
+const withYear = new Intl.DateTimeFormat('en-GB', { timeZone: 'UTC', day: 'numeric', month: 'long', year: 'numeric' })
+const weekday = new Intl.DateTimeFormat('en-GB', { timeZone: 'UTC', weekday: 'long' })
+
+const startOf = (day: string): number => Date.parse(`${day}T00:00:00Z`)
+
+/** Whether there is such a day, written "2026-09-21". JavaScript reads 31 June as 1 July; a refund should not. */
+export function isDay(text: string): boolean {
+  const ms = /^\d{4}-\d{2}-\d{2}$/.test(text) ? startOf(text) : Number.NaN
+  return Number.isFinite(ms) && new Date(ms).toISOString().slice(0, 10) === text
+}
 
 /** The day's number since 1970-01-01. @throws {RangeError} when it is no day of the calendar */
 function dayNumber(day: string): number {
-  const ms = /^\d{4}-\d{2}-\d{2}$/.test(day) ? Date.parse(`${day}T00:00:00Z`) : Number.NaN
-  // JavaScript reads 31 June as 1 July; a refund should not.
-  if (!Number.isFinite(ms) || new Date(ms).toISOString().slice(0, 10) !== day) throw new RangeError(`"${day}" is not a day of the calendar`)
-  return ms / dayMs
+  if (!isDay(day)) throw new RangeError(`"${day}" is not a day of the calendar`)
+  return startOf(day) / dayMs
 }
 
 /**
@@ -24,4 +32,14 @@ export function daysBetween(from: string, to: string): number {
 export function dayAfter(day: string, days: number): string {
   if (!Number.isInteger(days)) throw new RangeError('dayAfter requires a whole number of days')
   return new Date((dayNumber(day) + days) * dayMs).toISOString().slice(0, 10)
+}
+
+/** "21 September 2026". */
+export function dayInWords(day: string): string {
+  return withYear.format(startOf(day))
+}
+
+/** "Monday". */
+export function weekdayOf(day: string): string {
+  return weekday.format(startOf(day))
 }

@@ -1,4 +1,4 @@
-import { dayAfter } from './calendar-days'
+import { dayAfter, dayInWords } from './calendar-days'
 import { refundRules, type RefundRule } from './refund-rules'
 
 /** Last and first day of a row that counts days before the start. */
@@ -21,15 +21,8 @@ export function refundTable({ startsOn }: { startsOn: string }): { when: string,
 function datesOf(code: RefundRule['code'], startsOn: string): string {
   const days = daysOf[code]
   if (!days) return ''
-  const last = days.atLeast === null ? null : longDay(dayAfter(startsOn, -days.atLeast))
-  const first = days.atMost === null ? null : longDay(dayAfter(startsOn, -days.atMost))
+  const last = days.atLeast === null ? null : dayInWords(dayAfter(startsOn, -days.atLeast))
+  const first = days.atMost === null ? null : dayInWords(dayAfter(startsOn, -days.atMost))
   if (first === null) return ` (until ${last})`
   return last === null ? ` (from ${first})` : ` (${first} to ${last})`
-}
-
-const months = ['January', 'February', 'March', 'April', 'May', 'June', 'July', 'August', 'September', 'October', 'November', 'December']
-
-function longDay(day: string): string {
-  const [year, month, date] = day.split('-').map(Number)
-  return `${date} ${months[(month ?? 1) - 1]} ${year}`
 }

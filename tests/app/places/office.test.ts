@@ -161,8 +161,4 @@ describe('StepButtons', () => {
     await wrapper.get('dialog form').trigger('submit')
     expect(wrapper.emitted('step')![0]![0]).toEqual({ step: 'withdraw-offer', note: '' })
   })
-  it('stops nobody without the rule and the sum beside it', async () => {
-    const wrapper = await mountSuspended(StepButtons, { props: { place: placeView({ steps: ['finish', 'stop'], state: 'here' }), busy: false, refused: null } })
-    expect(wrapper.findAll('button').some(one => one.text().startsWith('Stop'))).toBe(false)
-  })
 })

@@ -7,7 +7,8 @@ import { PurchaseOrder, Sponsor } from '#server/db/entities/Sponsor'
 import { User } from '#server/db/entities/User'
 import { emptyPlace } from '#server/services/places/empty-place'
 import type { LedgerRow, MoneyBookView, OpenMoneyView } from '#shared/contract/money'
-import { addDays, schoolDay, startOfDay } from '#shared/contract/school-day'
+import { schoolDay, startOfDay } from '#shared/contract/school-day'
+import { dayAfter } from '#shared/domain/money/calendar-days'
 import { openHarness, type Harness } from '../harness'
 import { serveApi, type Api, type Caller } from '../http'
 import { makeMoneySchool, type MoneySchool } from './money-school'
@@ -32,7 +33,7 @@ const names = ['Agnes Wetherlam', '=SUM(A1:A9)', '@Wen Sallis', 'Zoë "Zo" Łuk,
 async function book(): Promise<void> {
   await school.em().transactional(async (tx) => {
     const places = names.map((name, at) => tx.create(BenchPlace, {
-      ...emptyPlace, cohort: tx.getReference(Cohort, school.cohortId), name, email: `payer${at}@sallowbeck.example`, state: 'deposit-paid', slot: at + 1, depositPaidAt: startOfDay(addDays(today, -40)), createdAt: new Date(),
+      ...emptyPlace, cohort: tx.getReference(Cohort, school.cohortId), name, email: `payer${at}@sallowbeck.example`, state: 'deposit-paid', slot: at + 1, depositPaidAt: startOfDay(dayAfter(today, -40)), createdAt: new Date(),
     }))
     tx.persist(places)
     let count = 0
@@ -40,12 +41,12 @@ async function book(): Promise<void> {
       count += 1
       tx.persist(tx.create(LedgerLine, { place, kind, purpose: 'deposit', amountMinor, currency: 'GBP', payment: null, refund: null, reference: kind === 'bank' && count === 2 ? '-1+1' : `ref ${count}`, by: tx.getReference(User, school.corin.id), at: startOfDay(on), writtenAt: new Date() }))
     }
-    places.forEach(place => line(place, 'bank', 35_000, addDays(today, -40)))
-    for (let at = 0; at < 24; at += 1) line(places[0]!, 'bank', 100 + (at % 3), addDays(today, -at))
-    line(places[1]!, 'bank-refund', -5000, addDays(today, -1))
+    places.forEach(place => line(place, 'bank', 35_000, dayAfter(today, -40)))
+    for (let at = 0; at < 24; at += 1) line(places[0]!, 'bank', 100 + (at % 3), dayAfter(today, -at))
+    line(places[1]!, 'bank-refund', -5000, dayAfter(today, -1))
     line(places[2]!, 'bank-refund', -2550, today)
     const sponsor = tx.create(Sponsor, { organisation: 'Hexley Row Rebuild Ltd', contact: 'Morag Stanyon', email: 'morag@hexley.example', createdAt: new Date() })
-    tx.persist(tx.create(PurchaseOrder, { place: places[3]!, sponsor, number: 'HRR-7', amountMinor: 245_000, currency: 'GBP', receivedAt: startOfDay(addDays(today, -40)), dueAt: startOfDay(addDays(today, -10)), takenBy: tx.getReference(User, school.corin.id) }))
+    tx.persist(tx.create(PurchaseOrder, { place: places[3]!, sponsor, number: 'HRR-7', amountMinor: 245_000, currency: 'GBP', receivedAt: startOfDay(dayAfter(today, -40)), dueAt: startOfDay(dayAfter(today, -10)), takenBy: tx.getReference(User, school.corin.id) }))
     Object.assign(places[3]!, { state: 'confirmed' })
   })
 }
@@ -89,8 +90,8 @@ it('finds by name, address and reference, taking wildcards as they are, and sums
 })
 
 it('takes days as the school\'s, the first and the last included', async () => {
-  const days = await all(`from=${addDays(today, -2)}&until=${addDays(today, -1)}`)
-  expect(new Set(days.map(row => schoolDay(new Date(row.at))))).toEqual(new Set([addDays(today, -2), addDays(today, -1)]))
+  const days = await all(`from=${dayAfter(today, -2)}&until=${dayAfter(today, -1)}`)
+  expect(new Set(days.map(row => schoolDay(new Date(row.at))))).toEqual(new Set([dayAfter(today, -2), dayAfter(today, -1)]))
   expect(days).toHaveLength(3)
 })
 
@@ -119,7 +120,7 @@ it('lists what is owed, soonest first, with the days it is late', async () => {
     ['Agnes Wetherlam', 245_000 - 37_424, 'card or bank', 0],
   ])
   // The course starts in 100 days.
-  expect(due.map(row => row.dueOn)).toEqual([addDays(today, -10), addDays(today, 72), addDays(today, 72), addDays(today, 72)])
+  expect(due.map(row => row.dueOn)).toEqual([dayAfter(today, -10), dayAfter(today, 72), dayAfter(today, 72), dayAfter(today, 72)])
   expect(due[0]?.order).toBe('HRR-7')
 })
 

@@ -9,7 +9,8 @@ import { applyPayment } from '#server/services/money/apply-payment'
 import { beginPayment } from '#server/services/money/begin-payment'
 import { emptyPlace } from '#server/services/places/empty-place'
 import type { Actor } from '#server/utils/actor'
-import { addDays, schoolDay } from '#shared/contract/school-day'
+import { schoolDay } from '#shared/contract/school-day'
+import { dayAfter } from '#shared/domain/money/calendar-days'
 import type { Harness } from '../harness'
 
 /** A school that takes money: a cohort at the handbook's prices, an admin, and places paid as a test says. */
@@ -32,7 +33,7 @@ export interface MoneySchool {
 export async function makeMoneySchool(harness: Harness, { startsIn = 100, places = 8 } = {}): Promise<MoneySchool> {
   const { app } = harness
   const em = (): EntityManager => app.orm.em.fork()
-  const startsOn = addDays(schoolDay(app.clock.schoolNow()), startsIn)
+  const startsOn = dayAfter(schoolDay(app.clock.schoolNow()), startsIn)
   let count = 0
 
   async function person(name: string, roles: Role[]): Promise<Actor> {
@@ -47,7 +48,7 @@ export async function makeMoneySchool(harness: Harness, { startsIn = 100, places
 
   const cohortId = await em().transactional(async (tx) => {
     // Price and deposit: handbook 5.4.
-    const made = tx.create(Cohort, { code: 'CIN-26', name: 'Cinder', course: null, startsOn, endsOn: addDays(startsOn, 88), pattern: 'weeks', places, open: true, priceMinor: 245_000, depositMinor: 35_000, currency: 'GBP', createdAt: new Date() })
+    const made = tx.create(Cohort, { code: 'CIN-26', name: 'Cinder', course: null, startsOn, endsOn: dayAfter(startsOn, 88), pattern: 'weeks', places, open: true, priceMinor: 245_000, depositMinor: 35_000, currency: 'GBP', createdAt: new Date() })
     tx.persist(made)
     tx.persist(tx.create(SchoolSetting, { name: 'school', value: { name: 'Sallowbeck School of Head Work', place: 'Old Tram Shed, Weir Lane, Sallowbeck (invented)', currency: 'GBP' } }))
     return made.id

@@ -13,7 +13,8 @@ import { beginPayment } from '#server/services/money/begin-payment'
 import { issueReceipt } from '#server/services/money/issue-receipt'
 import { makeReceipt } from '#server/services/money/make-receipt'
 import { takeBankPayment } from '#server/services/money/take-bank-payment'
-import { addDays, dayInWords, schoolDay } from '#shared/contract/school-day'
+import { schoolDay } from '#shared/contract/school-day'
+import { dayAfter, dayInWords } from '#shared/domain/money/calendar-days'
 import { openHarness, type Harness } from '../harness'
 import { serveApi, type Api } from '../http'
 import { makeMoneySchool, type MoneySchool } from './money-school'
@@ -78,11 +79,11 @@ describe('the receipt of a deposit', () => {
     await deliverMail(harness.app, (await school.em().findOneOrFail(Mail, { key: `receipt:${receipt!.id}` })).id)
     const number = `S-${String(receipt!.number).padStart(6, '0')}`
     const { startsOn } = await school.em().findOneOrFail(BenchPlace, { id: place.id }, { populate: ['cohort'] }).then(one => one.cohort.$)
-    const due = dayInWords(addDays(startsOn, -28))
+    const due = dayInWords(dayAfter(startsOn, -28))
 
     const message = harness.mail.inbox.list({ to: place.email }).find(one => one.subject === 'Your place in Cinder is booked')
     expect(message?.text).toContain(`£350.00 received ${dayInWords(today())}; receipt attached.`)
-    expect(message?.text).toContain(`Balance £2,100.00 by ${due}. Until ${dayInWords(addDays(today(), 14))} you may cancel for a full refund.`)
+    expect(message?.text).toContain(`Balance £2,100.00 by ${due}. Until ${dayInWords(dayAfter(today(), 14))} you may cancel for a full refund.`)
     const { attachments } = await simpleParser(harness.mail.inbox.raw(message!.id)!)
     expect(attachments.map(one => [one.filename, one.contentType])).toEqual([[`${number}.pdf`, 'application/pdf']])
     expect(createHash('sha256').update(attachments[0]!.content).digest('hex')).toBe((await school.em().findOneOrFail(Receipt, receipt!.id)).sha256)
@@ -109,7 +110,7 @@ describe('the receipt of a deposit', () => {
       const letter = await soon.em().findOneOrFail(Mail, { to: place.email, template: 'deposit-received' })
       const day = schoolDay(near.app.clock.schoolNow())
       // Due when the deposit was paid, where 28 days before the start is past.
-      expect(letter.text).toContain(`Balance £2,100.00 by ${dayInWords(day)}. Until ${dayInWords(addDays(day, 4))} you may cancel for a full refund.`)
+      expect(letter.text).toContain(`Balance £2,100.00 by ${dayInWords(day)}. Until ${dayInWords(dayAfter(day, 4))} you may cancel for a full refund.`)
     }
     finally {
       await near.close()

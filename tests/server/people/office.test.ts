@@ -1,14 +1,18 @@
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import { AuditEvent } from '#server/db/entities/AuditEvent'
+import { IdempotencyKey } from '#server/db/entities/IdempotencyKey'
 import { User, type Role } from '#server/db/entities/User'
 import { sealAudit } from '#server/services/audit/seal-audit'
+import { forgetAnswers } from '#server/services/jobs/forget-answers'
 import { openSession } from '#server/services/people/sign-in'
 import type { Actor } from '#server/utils/actor'
+import { recordEvent } from '#server/utils/record-event'
 import { findActor } from '#server/utils/session'
 import type { AuditRow, PersonDetail } from '#shared/contract/office'
 import type { Page, PersonView } from '#shared/contract/views'
 import { openHarness, type Harness } from '../harness'
 import { serveApi } from '../http'
+import { makeSchool } from '../review/school'
 
 let harness: Harness
 let corin: Actor
@@ -116,9 +120,37 @@ it('pages through the whole record in both orders without losing or doubling an 
   expect((await admin.get('/api/audit?after=nonsense')).body).toMatchObject({ code: 'page_unknown', status: 422 })
 })
 
-it('shows an instructor who teaches nobody, and a safety officer, no event of other people', async () => {
-  const silas = await person('Silas Okonray', ['instructor'])
-  const ingrid = await person('Ingrid Tarnhow', ['safety'])
-  expect((await (await api.as(silas)).get<Page<AuditRow>>('/api/audit')).body.items).toEqual([])
-  expect((await (await api.as(ingrid)).get<Page<AuditRow>>('/api/audit')).body.items.map(one => one.action)).toEqual([])
+it('shows an instructor the events of heads taught, and the safety officer those of tools and stops, and nothing more', async () => {
+  const own = await openHarness()
+  const server = await serveApi(own)
+  try {
+    const school = await makeSchool(own)
+    const elsewhere = crypto.randomUUID()
+    await own.app.orm.em.fork().transactional(async (tx) => {
+      recordEvent(tx, { actor: 'job', action: 'submission.start', subject: `head:${school.headId}` })
+      recordEvent(tx, { actor: 'job', action: 'head-stopped', subject: `head:${elsewhere}` })
+      recordEvent(tx, { actor: 'job', action: 'clearance-given', subject: `clearance:${elsewhere}` })
+      recordEvent(tx, { actor: 'job', action: 'roles-changed', subject: `person:${elsewhere}` })
+    })
+    const seen = async (actor: Actor) => (await (await server.as(actor)).get<Page<AuditRow>>('/api/audit')).body.items.map(one => one.action).sort()
+    expect(await seen(school.hanne)).toEqual(['submission.start'])
+    expect(await seen(school.stranger)).toEqual([])
+    expect(await seen(school.ingrid)).toEqual(['clearance-given', 'head-stopped'])
+    expect(await seen(school.corin)).toEqual(expect.arrayContaining(['clearance-given', 'head-stopped', 'roles-changed', 'submission.start']))
+  }
+  finally {
+    await server.close()
+    await own.close()
+  }
+})
+
+it('forgets the answers to calls after two months, and not before', async () => {
+  const now = new Date()
+  const wen = await person('Wen Forgotten', ['student'])
+  const kept = (days: number) => ({ person: wen.id, key: crypto.randomUUID(), route: 'POST /x', bodyHash: 'a'.repeat(64), status: 200, answer: {}, at: new Date(now.getTime() - days * 86_400_000) })
+  await em().transactional(async (tx) => {
+    for (const days of [1, 59, 61, 400]) tx.persist(tx.create(IdempotencyKey, kept(days)))
+  })
+  expect(await forgetAnswers(em(), now)).toBe(2)
+  expect(await em().count(IdempotencyKey, { person: wen.id })).toBe(2)
 })

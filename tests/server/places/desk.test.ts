@@ -150,6 +150,17 @@ describe('moving', () => {
     expect(await act(place, 'move', { to: 'MOV-12', cause: 'illness' })).toMatchObject({ status: 201 })
   })
 
+  it('does not count the school\'s own move against the student', async () => {
+    for (const [code, startsOn, endsOn] of [['MOV-15', '2026-12-21', '2027-03-18'], ['MOV-16', '2027-02-01', '2027-04-29'], ['MOV-17', '2027-06-21', '2027-09-18']] as const) await office.cohort({ code, startsOn, endsOn })
+    const place = await booked('MOV-15', 'Ruth Twice')
+    const bySchool = await act(place, 'move', { to: 'MOV-16', cause: 'school' })
+    expect(bySchool).toMatchObject({ status: 201 })
+    const own = await act(bySchool.body, 'move', { to: 'MOV-17', cause: 'student' })
+    expect(own).toMatchObject({ status: 201, body: { paid: { minor: 35_000 } } })
+    await office.cohort({ code: 'MOV-18', startsOn: '2027-10-04', endsOn: '2027-12-17' })
+    expect(await act(own.body, 'move', { to: 'MOV-18', cause: 'student' })).toMatchObject({ status: 409, body: { code: 'place_moved_once' } })
+  })
+
   it('moves somebody who falls ill after the start, once, with all the money', async () => {
     const today = harness.app.clock.schoolNow()
     const day = (days: number) => new Date(today.getTime() + days * 86_400_000).toISOString().slice(0, 10)
@@ -213,7 +224,7 @@ describe('steps', () => {
     const place = await booked('STP-01', 'Mateus Steps')
     expect(await act(place, 'steps', { step: 'here' })).toMatchObject({ status: 409, body: { code: 'place_state' } })
     expect(await act(place, 'bank-payments', { purpose: 'balance', amountMinor: 210_000, reference: 'STP 1', on: '2026-03-26' })).toMatchObject({ status: 201, body: { state: 'confirmed', due: null, steps: ['here'] } })
-    expect(await act(place, 'steps', { step: 'here' })).toMatchObject({ status: 200, body: { state: 'here', steps: ['finish', 'stop'] } })
+    expect(await act(place, 'steps', { step: 'here' })).toMatchObject({ status: 200, body: { state: 'here', steps: ['finish'] } })
     const finished = await act(place, 'steps', { step: 'finish' })
     expect(finished).toMatchObject({ status: 200, body: { state: 'finished', slot: null, steps: [] } })
     const row = await office.again(place)
@@ -227,7 +238,9 @@ describe('steps', () => {
     const place = await booked('STP-02', 'Tomek Stops')
     await act(place, 'bank-payments', { purpose: 'balance', amountMinor: 210_000, reference: 'STP 2', on: '2026-03-26' })
     await act(place, 'steps', { step: 'here' })
-    const stopped = await act(place, 'steps', { step: 'stop' })
+    // Stopping is no step of its own: the rule and the sum are seen first.
+    expect(await act(place, 'steps', { step: 'stop' })).toMatchObject({ status: 422, body: { code: 'input_invalid' } })
+    const stopped = await act(place, 'cancel', { cause: 'unsafe-work', seenMinor: 0 })
     expect(stopped).toMatchObject({ status: 409, body: { code: 'refund_changed', quote: { back: { minor: expect.any(Number) } } } })
     const { quote } = stopped.body as unknown as { quote: { back: { minor: number } } }
     expect(await act(place, 'cancel', { cause: 'unsafe-work', seenMinor: quote.back.minor })).toMatchObject({ status: 200, body: { state: 'stopped' } })

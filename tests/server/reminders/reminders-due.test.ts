@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { overdueSince, remindersDue, type ReminderCase } from '#server/services/reminders/reminders-due'
-import { addDays } from '#shared/contract/school-day'
+import { dayAfter } from '#shared/domain/money/calendar-days'
 
 // Cinder starts 21 September 2026; its balance is due 28 days before, on 24 August (handbook 5.1, 5.4). Days of the messages: 5.5.
 const place: ReminderCase = { state: 'deposit-paid', bookedOn: '2026-03-01', startsOn: '2026-09-21', balanceDueOn: '2026-08-24', dueMinor: 210_000, ordered: false, consent: 'none', consentSince: 1, accessUntil: null }
@@ -10,7 +10,7 @@ const kinds = (today: string, change: Partial<ReminderCase> = {}) => due(today, 
 describe('the balance', () => {
   it('is asked for 14 and 3 days before it is due, and late on the day after', () => {
     const all: Record<string, string[]> = {}
-    for (let day = '2026-08-01'; day <= '2026-09-02'; day = addDays(day, 1)) {
+    for (let day = '2026-08-01'; day <= '2026-09-02'; day = dayAfter(day, 1)) {
       for (const one of kinds(day)) all[one] = [...all[one] ?? [], day]
     }
     expect(Object.fromEntries(Object.entries(all).map(([one, days]) => [one, [days[0], days.at(-1)]]))).toEqual({
@@ -35,9 +35,10 @@ describe('the balance', () => {
     for (const state of ['asked', 'offered', 'waiting-list', 'moved', 'cancelled', 'stopped'] as const) expect(kinds('2026-08-25', { state }), state).toEqual([])
   })
   it('falls due on the day of a later booking, and is not asked for before', () => {
-    expect(kinds('2026-09-01', { bookedOn: '2026-09-01' })).toEqual([])
-    expect(due('2026-09-02', { bookedOn: '2026-09-01' })).toEqual([{ kind: 'balance-late', on: '2026-09-01', daysLate: 1, heldUntil: '2026-09-07' }])
-    expect(overdueSince({ ...place, bookedOn: '2026-09-01' }, '2026-09-06')).toBe(null)
+    const booked = { bookedOn: '2026-09-01', balanceDueOn: '2026-09-01' }
+    expect(kinds('2026-09-01', booked)).toEqual([])
+    expect(due('2026-09-02', booked)).toEqual([{ kind: 'balance-late', on: '2026-09-01', daysLate: 1, heldUntil: '2026-09-07' }])
+    expect(overdueSince({ ...place, ...booked }, '2026-09-06')).toBe(null)
     // Booked between the two: the earlier one is not sent after the fact.
     expect(kinds('2026-08-16', { bookedOn: '2026-08-15' })).toEqual([])
     expect(kinds('2026-08-21', { bookedOn: '2026-08-15' })).toEqual(['balance-due 2026-08-21'])

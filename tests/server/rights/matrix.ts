@@ -1,7 +1,8 @@
 import { BenchPlace } from '#server/db/entities/BenchPlace'
 import { placeToken } from '#server/services/places/place-link'
 import type { Actor } from '#server/utils/actor'
-import { addDays, schoolDay } from '#shared/contract/school-day'
+import { schoolDay } from '#shared/contract/school-day'
+import { dayAfter } from '#shared/domain/money/calendar-days'
 import { schoolConsent, schoolRubric } from '../review/school'
 import { askedPlace } from './asked-place'
 import { publishedFilm } from './published-film'
@@ -177,7 +178,7 @@ export const matrix: readonly MatrixRow[] = [
   row('POST /api/consent/text', { ...noRole, safety: 'yes' }, at('/api/consent/text', { after: 1, clauses: schoolConsent.clauses, choices: schoolConsent.choices })),
   row('GET /api/clearances', { ...noRole, admin: 'yes', safety: 'yes' }, at('/api/clearances')),
   row('GET /api/clearances/people/{id}', { ...noRole, admin: 'yes', safety: 'yes' }, async (_world, owner) => ({ path: `/api/clearances/people/${owner.id}` })),
-  row('POST /api/clearances', { ...noRole, safety: 'yes' }, async (world, owner) => ({ path: '/api/clearances', body: { person: owner.id, tool: 'die-grinder', until: addDays(schoolDay(world.school.now()), 30) } })),
+  row('POST /api/clearances', { ...noRole, safety: 'yes' }, async (world, owner) => ({ path: '/api/clearances', body: { person: owner.id, tool: 'die-grinder', until: dayAfter(schoolDay(world.school.now()), 30) } })),
   row('POST /api/clearances/{id}/withdraw', { ...noRole, safety: 'yes' }, async (world, owner) => ({ path: `/api/clearances/${await world.clearance(owner)}/withdraw`, body: {} })),
 
   // what the school works by

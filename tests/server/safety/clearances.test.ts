@@ -6,7 +6,8 @@ import { Cohort } from '#server/db/entities/Cohort'
 import { User } from '#server/db/entities/User'
 import type { Actor } from '#server/utils/actor'
 import type { ClearanceOne, ClearanceRow, PersonSafetyView } from '#shared/contract/safety'
-import { addDays, schoolDay, startOfDay } from '#shared/contract/school-day'
+import { schoolDay, startOfDay } from '#shared/contract/school-day'
+import { dayAfter } from '#shared/domain/money/calendar-days'
 import type { HeadView, Page } from '#shared/contract/views'
 import { openHarness, type Harness } from '../harness'
 import { serveApi, type Api, type Caller } from '../http'
@@ -66,8 +67,8 @@ it('lists everybody of the shop against what the route asks of them, staff inclu
 
 it('puts first whose clearance lapses first, and those with none last', async () => {
   const dele = await here('Dele Marchbank')
-  await give(dele.id, 'die-grinder', addDays(today, 400))
-  await give(dele.id, 'flow-bench', addDays(today, 2))
+  await give(dele.id, 'die-grinder', dayAfter(today, 400))
+  await give(dele.id, 'flow-bench', dayAfter(today, 2))
   const names = (await list('?sort=expiry')).items.map(one => one.name)
   expect(names.slice(0, 2)).toEqual(['Dele Marchbank', 'Ruth Amberlow'])
   const pages = [await list('?sort=expiry&limit=1')]
@@ -83,7 +84,7 @@ it('runs to the end of its last day by the school\'s clock, then shuts the stage
   await walkTo(school, 70, headId)
   const caller = await api.as(tomek)
   expect(await stageOf(caller, headId, 70)).toMatchObject({ state: 'shut', why: 'You are not cleared for the die grinder. See the safety officer.' })
-  const until = addDays(today, 40)
+  const until = dayAfter(today, 40)
   expect(await give(tomek.id, 'die-grinder', until)).toMatchObject({ status: 201, body: { tool: 'die-grinder', until, lapsed: false, givenBy: 'Ingrid Tarnhow' } })
   expect((await stageOf(caller, headId, 70))?.state).toBe('open')
 
@@ -92,7 +93,7 @@ it('runs to the end of its last day by the school\'s clock, then shuts the stage
     harness.app.clock = createClock({ demoNow: new Date(instant).toISOString(), seededAt: new Date().toISOString() })
   }
   try {
-    const midnight = startOfDay(addDays(until, 1)).getTime()
+    const midnight = startOfDay(dayAfter(until, 1)).getTime()
     at(midnight - 60_000)
     expect((await stageOf(caller, headId, 70))?.state).toBe('open')
     at(midnight)
@@ -106,14 +107,14 @@ it('runs to the end of its last day by the school\'s clock, then shuts the stage
 
 it('lets the newest word count, also when it is the shorter, and keeps the older ones to be seen', async () => {
   const osric = await here('Osric Pellam')
-  await give(osric.id, 'hot-tank', addDays(today, 300))
-  await give(osric.id, 'hot-tank', addDays(today, 10))
+  await give(osric.id, 'hot-tank', dayAfter(today, 300))
+  await give(osric.id, 'hot-tank', dayAfter(today, 10))
   const { body } = await ingrid.get<PersonSafetyView>(`/api/clearances/people/${osric.id}`)
-  expect(body.clearances).toMatchObject([{ tool: 'hot-tank', until: addDays(today, 10) }])
-  expect(body.history.map(one => [one.until, one.withdrawnAt !== null])).toEqual(expect.arrayContaining([[addDays(today, 10), false], [addDays(today, 300), true]]))
+  expect(body.clearances).toMatchObject([{ tool: 'hot-tank', until: dayAfter(today, 10) }])
+  expect(body.history.map(one => [one.until, one.withdrawnAt !== null])).toEqual(expect.arrayContaining([[dayAfter(today, 10), false], [dayAfter(today, 300), true]]))
   // Two officers at once: one clearance stands.
-  await Promise.all([20, 30, 40].map(days => give(osric.id, 'saw', addDays(today, days))))
-  await Promise.all([20, 30, 40].map(days => give(osric.id, 'flow-bench', addDays(today, days))))
+  await Promise.all([20, 30, 40].map(days => give(osric.id, 'saw', dayAfter(today, days))))
+  await Promise.all([20, 30, 40].map(days => give(osric.id, 'flow-bench', dayAfter(today, days))))
   expect(await school.em().count(Clearance, { person: osric.id, tool: 'flow-bench', withdrawnAt: null })).toBe(1)
   expect(await school.em().count(Clearance, { person: osric.id, tool: 'saw' })).toBe(0)
 })
@@ -135,9 +136,9 @@ it('takes a clearance back at once, and only once', async () => {
 it('refuses a clearance for yesterday, a day that is none, four years, an unknown tool or person, and the saw for a student', async () => {
   const callum = await here('Callum Thrapp')
   const refused: [unknown, number, string][] = [
-    [{ person: callum.id, tool: 'die-grinder', until: addDays(today, -1) }, 422, 'clearance_in_past'],
+    [{ person: callum.id, tool: 'die-grinder', until: dayAfter(today, -1) }, 422, 'clearance_in_past'],
     [{ person: callum.id, tool: 'die-grinder', until: '2027-02-31' }, 422, 'input_invalid'],
-    [{ person: callum.id, tool: 'die-grinder', until: addDays(today, 4 * 366) }, 422, 'clearance_in_past'],
+    [{ person: callum.id, tool: 'die-grinder', until: dayAfter(today, 4 * 366) }, 422, 'clearance_in_past'],
     [{ person: callum.id, tool: 'welder', until: today }, 422, 'input_invalid'],
     [{ person: callum.id, tool: 'saw', until: today }, 422, 'tool_for_staff'],
     [{ person: '00000000-0000-4000-8000-000000000000', tool: 'saw', until: today }, 404, 'person_not_found'],

@@ -3,7 +3,8 @@ import { Consent, SafetyNote, SharingChoice } from '#server/db/entities/Consent'
 import { mayShare } from '#server/services/safety/may-share'
 import type { Actor } from '#server/utils/actor'
 import type { ConsentTextView, ConsentView, PersonSafetyView } from '#shared/contract/safety'
-import { addDays, schoolDay } from '#shared/contract/school-day'
+import { schoolDay } from '#shared/contract/school-day'
+import { dayAfter } from '#shared/domain/money/calendar-days'
 import type { HeadView } from '#shared/contract/views'
 import { openHarness, type Harness } from '../harness'
 import { serveApi, type Api, type Caller } from '../http'
@@ -28,7 +29,7 @@ async function newcomer(): Promise<{ who: Actor, caller: Caller, headId: string 
   count += 1
   const who = await school.person(`Newcomer${count} Pell`, ['student'])
   for (const tool of ['hot-tank', 'pressure-rig', 'flow-bench', 'die-grinder', 'right-angle-grinder']) {
-    expect((await ingrid.post('/api/clearances', { person: who.id, tool, until: addDays(schoolDay(school.now()), 60) })).status).toBe(201)
+    expect((await ingrid.post('/api/clearances', { person: who.id, tool, until: dayAfter(schoolDay(school.now()), 60) })).status).toBe(201)
   }
   const headId = await school.anotherHead(`DNK-07${String(count).padStart(2, '0')}`, who)
   await walkTo(school, 70, headId)

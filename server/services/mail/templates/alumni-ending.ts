@@ -1,5 +1,5 @@
 import { moneyText, type Money } from '#shared/contract/money'
-import { dayInWords } from '#shared/contract/school-day'
+import { dayInWords } from '#shared/domain/money/calendar-days'
 import type { Letter } from '../letter'
 
 /** Message 17: access to the lessons ends. `until` is the last day they can be read. */

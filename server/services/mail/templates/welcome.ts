@@ -1,4 +1,4 @@
-import { weekdayOf } from '#shared/contract/school-day'
+import { weekdayOf } from '#shared/domain/money/calendar-days'
 import type { Letter } from '../letter'
 import { dateInWords } from '../school-words'
 
